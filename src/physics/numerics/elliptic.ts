@@ -102,8 +102,7 @@ export function carlsonRD(x: number, y: number, z: number): number {
   const e3 = (3 * u * v - 8 * w * w) * w;
   const e4 = 3 * (u * v - w * w) * w * w;
   const e5 = u * v * w * w * w;
-  const series =
-    1 - (3 * e2) / 14 + e3 / 6 + (9 * e2 * e2) / 88 - (3 * e4) / 22 - (9 * e2 * e3) / 52 + (3 * e5) / 26;
+  const series = 1 - (3 * e2) / 14 + e3 / 6 + (9 * e2 * e2) / 88 - (3 * e4) / 22 - (9 * e2 * e3) / 52 + (3 * e5) / 26;
   return (scale * series) / (mean * Math.sqrt(mean)) + 3 * sum;
 }
 

@@ -10,50 +10,67 @@
  * Rounding: relative error below 1e-15 for every k' from 1e-300 to 1, against mpmath at 50 digits (test/fixtures/mpmath).
  */
 
-/** Sum and mean of the descending AGM sequence that starts at (1, k'): what K and E are both made from. */
-function descend(complementaryModulus: number): { mean: number; weightedSquares: number } {
-  let a = 1;
-  let g = complementaryModulus;
-  let weight = 1;
-  let weightedSquares = 0;
-  // Quadratic convergence: below 1e-9 the next c² is already under one unit in the last place.
-  while (Math.abs(a - g) > 1e-9 * a) {
-    const c = (a - g) / 2;
+/**
+ * The descending AGM sequence from (1, k') with c₀² = k²: its limit, and Σₙ₌₁ 2ⁿ⁻¹ cₙ², what K and E are both made from.
+ *
+ * cₙ₊₁ = (aₙ − gₙ)/2 = cₙ²/(4aₙ₊₁). The first and the last c are taken by the second expression, which keeps its digits
+ * however small k is; those between by the first, which does not pass an error on from step to step.
+ */
+function descend(complementaryModulus: number, modulusSquared: number): { mean: number; weightedSquares: number } {
+  let a = (1 + complementaryModulus) / 2;
+  let g = Math.sqrt(complementaryModulus);
+  let c = modulusSquared / (4 * a);
+  let weightedSquares = c * c;
+  let weight = 2;
+  // Quadratic convergence: below 1e-8 the c² after the next is under one unit in the last place.
+  while (a - g > 1e-8 * a) {
+    c = (a - g) / 2;
     const mean = (a + g) / 2;
     g = Math.sqrt(a * g);
     a = mean;
     weightedSquares += weight * c * c;
     weight *= 2;
   }
-  const c = (a - g) / 2;
-  return { mean: (a + g) / 2, weightedSquares: weightedSquares + weight * c * c };
+  const mean = (a + g) / 2;
+  c = (c * c) / (4 * mean);
+  return { mean, weightedSquares: weightedSquares + weight * c * c };
 }
 
-/** K(k) = ∫₀^{π/2} dθ/√(1 − k² sin²θ), DLMF 19.8.5. */
+function modulusSquaredOf(complementaryModulus: number): number {
+  return (1 - complementaryModulus) * (1 + complementaryModulus);
+}
+
+/** K(k) = ∫₀^{π/2} dθ/√(1 − k² sin²θ), DLMF 19.8.5; Infinity at k' = 0. */
 export function ellipticK(complementaryModulus: number): number {
-  return Math.PI / (2 * descend(complementaryModulus).mean);
+  if (complementaryModulus === 0) return Infinity;
+  return Math.PI / (2 * descend(complementaryModulus, modulusSquaredOf(complementaryModulus)).mean);
 }
 
 /**
- * K(k) − E(k), every term positive, so no cancellation however small k is: K·Σ 2ⁿ⁻¹ cₙ² (DLMF 19.8.6), with
+ * K(k) − E(k), every term positive, so no cancellation however small k is: K·Σₙ₌₀ 2ⁿ⁻¹ cₙ² (DLMF 19.8.6), with
  * c₀² = k² = (1 − k')(1 + k') passed in exactly as `modulusSquared` where the caller knows it better than 1 − k'².
+ * Infinity at k' = 0.
  */
 export function ellipticKMinusE(
   complementaryModulus: number,
-  modulusSquared = (1 - complementaryModulus) * (1 + complementaryModulus),
+  modulusSquared = modulusSquaredOf(complementaryModulus),
 ): number {
-  const { mean, weightedSquares } = descend(complementaryModulus);
+  if (complementaryModulus === 0) return Infinity;
+  const { mean, weightedSquares } = descend(complementaryModulus, modulusSquared);
   return (Math.PI / (2 * mean)) * (modulusSquared / 2 + weightedSquares);
 }
 
 /**
- * E(k) = ∫₀^{π/2} √(1 − k² sin²θ) dθ. Near k = 1 as K − E would cancel, so E = k'²·(R_D(0, k'², 1) + R_D(0, 1, k'²))/3, DLMF 19.25.1.
+ * E(k) = ∫₀^{π/2} √(1 − k² sin²θ) dθ. Near k = 1 as K − E would cancel, so E = k'²·(R_D(0, k'², 1) + R_D(0, 1, k'²))/3,
+ * DLMF 19.25.1, and below k' = 1e-9 the limit 1, which E = 1 + k'²(ln(4/k') − 1/2)/2 + … has then reached.
  */
 export function ellipticE(complementaryModulus: number): number {
+  if (complementaryModulus < 1e-9) return 1;
   const q = complementaryModulus * complementaryModulus;
   if (q > 0.1) {
-    const { mean, weightedSquares } = descend(complementaryModulus);
-    return (Math.PI / (2 * mean)) * (1 - (1 - q) / 2 - weightedSquares);
+    const modulusSquared = modulusSquaredOf(complementaryModulus);
+    const { mean, weightedSquares } = descend(complementaryModulus, modulusSquared);
+    return (Math.PI / (2 * mean)) * (1 - modulusSquared / 2 - weightedSquares);
   }
   return (q * (carlsonRD(0, q, 1) + carlsonRD(0, 1, q))) / 3;
 }

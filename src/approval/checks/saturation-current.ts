@@ -1,0 +1,23 @@
+import { dropCurrent_A } from '../../physics/saturation.ts';
+import type { Check } from '../check.ts';
+import { constructionCharacteristic, modelUncertainty } from '../construction.ts';
+import { inWords, percent } from '../wording.ts';
+
+/** Does the construction carry the drawing's current before its differential inductance has dropped by the drawing's share? */
+export const saturationCurrent: Check = {
+  name: 'saturation-current',
+  observe({ part: { drawing, construction } }) {
+    if (!drawing?.saturation || !construction) return [];
+    const { current_A, inductanceDrop, temperature_degC } = drawing.saturation;
+    const characteristic = constructionCharacteristic(construction, temperature_degC);
+    const value = dropCurrent_A(characteristic, inductanceDrop);
+    const common = {
+      what: `Current for an inductance drop of ${percent(inductanceDrop)} at ${inWords(temperature_degC, '°C')}`,
+      unit: 'A',
+      limit: { lower: current_A },
+      method: characteristic.method,
+    };
+    if (value === null) return [{ ...common, metBecause: `the inductance never drops by ${percent(inductanceDrop)}` }];
+    return [{ ...common, value, standardUncertainty: modelUncertainty(value, characteristic.method) }];
+  },
+};

@@ -1,0 +1,31 @@
+import { fieldMethod, isFieldCoil, worstFieldAtDistance } from '../../physics/fields/field.ts';
+import { within } from '../../physics/invalid-quantity.ts';
+import type { Check } from '../check.ts';
+import { modelUncertainty } from '../construction.ts';
+import { inWords } from '../wording.ts';
+
+/** Does the field stay below the limit at the duty's distance, in the worst direction, at peak current? */
+export const strayField: Check = {
+  name: 'stray-field',
+  observe({ part: { construction }, duty: { strayField: place, peakCurrent_A } }) {
+    if (!place || !construction) return [];
+    const { coil } = construction;
+    const common = {
+      what: `Largest flux density ${inWords(place.distance_m, 'm')} from the coil's centre at ${inWords(peakCurrent_A, 'A')}`,
+      unit: 'T',
+      limit: { upper: place.limit_T },
+    };
+    if (!isFieldCoil(coil)) {
+      const method = {
+        name: 'none',
+        references: [],
+        relativeError: 1,
+        validity: 'round loops, solenoids and multilayer coils in free space',
+      };
+      return [{ ...common, method, undecided: `the stray field of a ${coil.shape} winding is not calculated here` }];
+    }
+    const { magnitude_T } = within('/duty/strayField', () => worstFieldAtDistance(coil, peakCurrent_A, place.distance_m));
+    const method = fieldMethod(coil);
+    return [{ ...common, value: magnitude_T, standardUncertainty: modelUncertainty(magnitude_T, method), method }];
+  },
+};

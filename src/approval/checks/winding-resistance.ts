@@ -1,0 +1,26 @@
+import { within } from '../../physics/invalid-quantity.ts';
+import { windingResistance as resistanceOf } from '../../physics/losses/winding-resistance.ts';
+import type { Check } from '../check.ts';
+import { modelUncertainty, WINDING_POINTER } from '../construction.ts';
+import { inWords } from '../wording.ts';
+
+/** Does the winding as constructed stay below the drawing's resistance at the drawing's temperature? */
+export const windingResistance: Check = {
+  name: 'winding-resistance',
+  observe({ part: { drawing, construction } }) {
+    const winding = construction?.winding;
+    if (!drawing?.resistance || !winding) return [];
+    const { upper_ohm, temperature_degC } = drawing.resistance;
+    const { resistance_ohm, method } = within(WINDING_POINTER, () => resistanceOf(winding, temperature_degC));
+    return [
+      {
+        what: `Winding resistance at ${inWords(temperature_degC, '°C')}`,
+        unit: 'Ω',
+        limit: { upper: upper_ohm },
+        value: resistance_ohm,
+        standardUncertainty: modelUncertainty(resistance_ohm, method),
+        method,
+      },
+    ];
+  },
+};

@@ -1,0 +1,46 @@
+import { readFileSync } from 'node:fs';
+import { randomUUIDv7 } from 'node:crypto';
+import type { FastifyInstance } from 'fastify';
+import { type DestinationStream, pino } from 'pino';
+import type { ApprovalDesk } from './approval/approval.ts';
+import type { Config } from './config/index.ts';
+import { createApp } from './http/app.ts';
+import { approvalStore } from './storage/approvals.ts';
+import { openSqlite } from './storage/sqlite.ts';
+
+/** The service, wired: an unstarted server and what has to be disposed of after it. */
+export interface Service {
+  readonly app: FastifyInstance;
+  readonly desk: ApprovalDesk;
+  dispose(): Promise<void>;
+}
+
+/** What tests put in place of the real thing. */
+export interface Overrides {
+  readonly now?: () => Date;
+  readonly newId?: () => string;
+  readonly logDestination?: DestinationStream;
+}
+
+const { version } = JSON.parse(readFileSync(new URL('../package.json', import.meta.url), 'utf8')) as { version: string };
+
+/** Picks the implementations and wires them; the one place that does. */
+export async function compose(config: Config, overrides: Overrides = {}): Promise<Service> {
+  const logger = pino({ level: config.log.level }, overrides.logDestination ?? pino.destination({ sync: false }));
+  const database = await openSqlite(config.store.dataDir);
+  const desk: ApprovalDesk = {
+    store: approvalStore(database),
+    engineVersion: version,
+    now: overrides.now ?? (() => new Date()),
+    newId: overrides.newId ?? randomUUIDv7,
+  };
+  const app = await createApp({ version, logger, limits: config.limits, desk });
+  return {
+    app,
+    desk,
+    dispose: async () => {
+      await app.close();
+      await database.close();
+    },
+  };
+}

@@ -1,0 +1,119 @@
+import { z } from 'zod';
+import type { Duty } from '../../approval/duty.ts';
+import type { Part } from '../../approval/part.ts';
+import type { ApprovalRequest } from '../../approval/request.ts';
+import type { Instrument } from '../../evidence/instrument.ts';
+import type { Unit } from '../../evidence/unit.ts';
+import { CoilSchema } from './coils.ts';
+import { SweepSchema, WindingSchema } from './inductor.ts';
+import { PathSchema } from './path.ts';
+import * as q from './quantities.ts';
+import { UncertaintyMap } from './uncertainty.ts';
+
+const text = (longest: number) => z.string().min(1).max(longest).regex(/^[^\p{Cc}]*$/u, 'must not hold control characters');
+
+const DrawingSchema = z
+  .strictObject({
+    inductance: z.strictObject({
+      nominal_H: q.inductance_H,
+      lower_H: q.inductance_H,
+      upper_H: q.inductance_H,
+      testCurrent_A: z.number().min(0).max(1e9).exactOptional().meta({ description: 'A; default 0' }),
+      testFrequency_Hz: q.frequency_Hz.exactOptional(),
+    }),
+    resistance: z.strictObject({ upper_ohm: q.resistance_ohm, temperature_degC: q.temperature_degC }).exactOptional(),
+    saturation: z
+      .strictObject({
+        current_A: q.positiveCurrent_A,
+        inductanceDrop: q.fraction,
+        temperature_degC: q.temperature_degC,
+      })
+      .exactOptional(),
+    thermal: z.strictObject({ current_A: q.positiveCurrent_A, rise_K: q.rise_K }).exactOptional(),
+  })
+  .meta({ id: 'Drawing', description: 'what the drawing promises' });
+
+export const PartSchema = z
+  .strictObject({
+    number: text(100),
+    revision: text(40),
+    description: text(500).exactOptional(),
+    drawing: DrawingSchema.exactOptional(),
+    construction: z
+      .strictObject({ coil: CoilSchema, winding: WindingSchema.exactOptional() })
+      .exactOptional()
+      .meta({ description: 'how the part is made' }),
+  })
+  .meta({ id: 'Part', description: 'a part at a revision' }) satisfies z.ZodType<Part>;
+
+export const DutySchema = z
+  .strictObject({
+    peakCurrent_A: q.positiveCurrent_A,
+    rmsCurrent_A: q.positiveCurrent_A.exactOptional(),
+    rippleCurrent_A: q.positiveCurrent_A.exactOptional().meta({ description: 'A, peak to peak' }),
+    frequency_Hz: q.frequency_Hz.exactOptional(),
+    ambient_degC: q.temperature_degC.exactOptional(),
+    coreTemperature_degC: q.temperature_degC.exactOptional(),
+    required: z
+      .strictObject({
+        inductanceAtPeak_H: q.inductance_H.exactOptional(),
+        storedEnergy_J: q.energy_J.exactOptional(),
+        fluxMargin: z
+          .number()
+          .min(0)
+          .lt(1)
+          .exactOptional()
+          .meta({ description: 'how far below saturation the flux density must stay, as a fraction of the saturation flux density' }),
+      })
+      .exactOptional(),
+    interruption: z
+      .strictObject({
+        path: PathSchema,
+        source_V: q.voltage_V.exactOptional(),
+        voltageLimit_V: q.positiveVoltage_V.exactOptional(),
+        timeLimit_s: q.time_s.exactOptional(),
+        safeCurrent_A: q.positiveCurrent_A.exactOptional(),
+        pathEnergyLimit_J: q.energy_J.exactOptional(),
+      })
+      .exactOptional(),
+    strayField: z.strictObject({ distance_m: q.length_m, limit_T: q.fluxDensity_T }).exactOptional(),
+    hotspotLimit_degC: q.temperature_degC.exactOptional(),
+    evidence: z.strictObject({ minimumUnits: z.int().min(0).max(1e6) }).exactOptional(),
+    risk: q.risk.exactOptional(),
+  })
+  .meta({ id: 'Duty', description: 'what a place of use asks of a part' }) satisfies z.ZodType<Duty>;
+
+const relative = z.number().min(0).max(1).exactOptional();
+const offset = q.standardUncertainty.exactOptional();
+
+export const InstrumentSchema = z
+  .strictObject({
+    inductance: z.strictObject({ relative, offset_H: offset }).exactOptional(),
+    current: z.strictObject({ relative, offset_A: offset }).exactOptional(),
+    resistance: z.strictObject({ relative, offset_ohm: offset }).exactOptional(),
+    voltage: z.strictObject({ relative, offset_V: offset }).exactOptional(),
+  })
+  .meta({
+    id: 'Instrument',
+    description: 'standard uncertainties (k = 1): a gain relative to the reading and an offset, each common to all readings',
+  }) satisfies z.ZodType<Instrument>;
+
+export const UnitSchema = z
+  .strictObject({
+    serial: text(100),
+    measuredAt: z.iso.datetime({ offset: true }),
+    instrument: InstrumentSchema,
+    temperature_degC: q.temperature_degC.exactOptional(),
+    resistance_ohm: q.resistance_ohm.exactOptional(),
+    sweep: SweepSchema,
+  })
+  .meta({ id: 'Unit', description: 'one measured unit' }) satisfies z.ZodType<Unit>;
+
+export const ApprovalRequestSchema = z
+  .strictObject({
+    part: PartSchema,
+    duty: DutySchema,
+    evidence: z.strictObject({ units: z.array(UnitSchema).max(1000).exactOptional() }).exactOptional(),
+    uncertainty: UncertaintyMap.exactOptional(),
+  })
+  .meta({ id: 'ApprovalRequest' }) satisfies z.ZodType<ApprovalRequest>;

@@ -1,0 +1,20 @@
+import type { GeneratedAlways } from 'kysely';
+
+/** The tables as they are after the last migration. */
+export interface Tables {
+  approvals: {
+    /** the record's place in the chain */
+    position: GeneratedAlways<number>;
+    id: string;
+    part_number: string;
+    part_revision: string;
+    verdict: string;
+    recorded_at: string;
+    input_digest: string;
+    record_digest: string;
+    previous_digest: string | null;
+    idempotency_key: string | null;
+    /** the approval as it was answered, JSON */
+    record: string;
+  };
+}

@@ -12,17 +12,17 @@ export type Conductor = 'copper' | 'aluminium';
 export interface Winding {
   readonly turns: number;
   readonly meanTurnLength_m: number;
-  readonly wireDiameter_m?: number | undefined;
-  readonly foilThickness_m?: number | undefined;
-  readonly foilWidth_m?: number | undefined;
+  readonly wireDiameter_m?: number;
+  readonly foilThickness_m?: number;
+  readonly foilWidth_m?: number;
   /** Default 1. */
-  readonly strands?: number | undefined;
+  readonly strands?: number;
   /** Default 1; a half-filled layer may be counted as a half. */
-  readonly layers?: number | undefined;
-  readonly pitch_m?: number | undefined;
+  readonly layers?: number;
+  readonly pitch_m?: number;
   /** Default copper. */
-  readonly conductor?: Conductor | undefined;
-  readonly windowArea_m2?: number | undefined;
+  readonly conductor?: Conductor;
+  readonly windowArea_m2?: number;
 }
 
 interface ConductorProperties {
@@ -199,7 +199,7 @@ function checkTemperature(conductor: Conductor, temperature_degC: number, pointe
 
 function directMethod(conductor: Conductor, temperature_degC: number): Method {
   return {
-    name: `direct-current resistance of ${conductor} at ${temperature_degC} °C, linear in temperature`,
+    name: `direct-current resistance of ${conductor}, linear in temperature`,
     references: [conductor === 'copper' ? 'IEC 60028:1925' : 'IEC 60889:1987'],
     relativeError: resistivityError(conductor, temperature_degC),
     validity:

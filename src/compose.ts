@@ -1,11 +1,12 @@
-import { readFileSync } from 'node:fs';
 import { randomUUIDv7 } from 'node:crypto';
+import { readFileSync } from 'node:fs';
 import type { FastifyInstance } from 'fastify';
 import { type DestinationStream, pino } from 'pino';
 import type { ApprovalDesk } from './approval/approval.ts';
 import type { Config } from './config/index.ts';
 import { createApp } from './http/app.ts';
 import { approvalStore } from './storage/approvals.ts';
+import { openPostgres } from './storage/postgres.ts';
 import { openSqlite } from './storage/sqlite.ts';
 
 /** The service, wired: an unstarted server and what has to be disposed of after it. */
@@ -22,12 +23,15 @@ export interface Overrides {
   readonly logDestination?: DestinationStream;
 }
 
-const { version } = JSON.parse(readFileSync(new URL('../package.json', import.meta.url), 'utf8')) as { version: string };
+const { version } = JSON.parse(readFileSync(new URL('../package.json', import.meta.url), 'utf8')) as {
+  version: string;
+};
 
 /** Picks the implementations and wires them; the one place that does. */
 export async function compose(config: Config, overrides: Overrides = {}): Promise<Service> {
   const logger = pino({ level: config.log.level }, overrides.logDestination ?? pino.destination({ sync: false }));
-  const database = await openSqlite(config.store.dataDir);
+  const { store } = config;
+  const database = 'postgresUrl' in store ? await openPostgres(store.postgresUrl) : await openSqlite(store.dataDir);
   const desk: ApprovalDesk = {
     store: approvalStore(database),
     engineVersion: version,

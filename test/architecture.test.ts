@@ -16,7 +16,7 @@ const ARROWS: Record<string, readonly string[]> = {
   report: ['approval', 'evidence', 'physics', 'errors'],
   storage: ['approval', 'evidence', 'errors'],
   workers: ['approval', 'evidence', 'metrology', 'physics', 'report', 'errors'],
-  http: ['approval', 'evidence', 'metrology', 'physics', 'report', 'errors'],
+  http: ['approval', 'evidence', 'metrology', 'physics', 'report', 'demo', 'errors'],
   config: ['errors'],
   demo: ['approval', 'evidence', 'physics'],
   compose: ['http', 'workers', 'storage', 'report', 'config', 'approval', 'evidence', 'metrology', 'physics', 'errors'],
@@ -29,7 +29,7 @@ const ARROWS: Record<string, readonly string[]> = {
 const LIBRARIES: Record<string, RegExp> = {
   metrology: /^@stdlib\/stats-/,
   approval: /^(canonicalize|node:crypto)$/,
-  storage: /^(kysely|kysely\/migration|node:.*)$/,
+  storage: /^(kysely|kysely\/migration|pg|node:.*)$/,
   http: /^(fastify|fastify-type-provider-zod|@fastify\/.*|zod|prom-client|node:.*)$/,
   workers: /^(piscina|node:.*)$/,
   config: /^zod$/,
@@ -41,7 +41,8 @@ const LIBRARIES: Record<string, RegExp> = {
 
 const files = readdirSync(SRC, { recursive: true, encoding: 'utf8' }).filter((file) => file.endsWith('.ts'));
 const roomOf = (file: string) => (file.includes('/') ? file.slice(0, file.indexOf('/')) : file.replace('.ts', ''));
-const IMPORT = /(?:import|export)\s[^;'"]*?from\s+['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)|^import\s+['"]([^'"]+)['"]/gm;
+const IMPORT =
+  /(?:import|export)\s[^;'"]*?from\s+['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)|^import\s+['"]([^'"]+)['"]/gm;
 const importsOf = (text: string) => [...text.matchAll(IMPORT)].map((match) => (match[1] ?? match[2] ?? match[3])!);
 
 describe('the direction of imports', () => {
@@ -51,7 +52,8 @@ describe('the direction of imports', () => {
   });
 
   it('reads imports in each of their forms', () => {
-    const forms = "import a from 'x';\nimport {\n  b,\n} from 'y';\nexport * from 'z';\nconst c = import('w');\nimport 'v';\n";
+    const forms =
+      "import a from 'x';\nimport {\n  b,\n} from 'y';\nexport * from 'z';\nconst c = import('w');\nimport 'v';\n";
     expect(importsOf(forms).sort()).toEqual(['v', 'w', 'x', 'y', 'z']);
   });
 

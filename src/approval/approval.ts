@@ -33,13 +33,18 @@ export interface ApprovalDesk {
 }
 
 /** Evaluates a request and records the approval; resolves once the record is durable. */
-export async function approve(desk: ApprovalDesk, request: ApprovalRequest, idempotencyKey?: string): Promise<Recorded> {
+export async function approve(
+  desk: ApprovalDesk,
+  request: ApprovalRequest,
+  idempotencyKey?: string,
+): Promise<Recorded> {
   const evaluation = evaluate(request);
   const id = desk.newId();
-  const idempotency = idempotencyKey === undefined ? undefined : { key: idempotencyKey, inputDigest: digestOf(request) };
+  const idempotency =
+    idempotencyKey === undefined ? undefined : { key: idempotencyKey, inputDigest: digestOf(request) };
   return desk.store.append((previous) => {
     const { checks, cautions, verdict, reasons } = evaluation;
-    const body = { id, verdict, reasons, ...request, checks, cautions, engine: { version: desk.engineVersion } };
-    return seal({ request, ...body, recordedAt: desk.now().toISOString() }, previous);
+    const content = { id, verdict, reasons, ...request, checks, cautions, engine: { version: desk.engineVersion } };
+    return seal(request, { ...content, recordedAt: desk.now().toISOString() }, previous);
   }, idempotency);
 }

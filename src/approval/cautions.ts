@@ -1,8 +1,10 @@
 import { inWords } from './wording.ts';
 
+export const CAUTION_CODES = ['stored-energy', 'hazardous-energy', 'turn-off-voltage', 'static-field', 'hot-surface'] as const;
+
 /** Something that can hurt, in words; stable `code`. */
 export interface Caution {
-  readonly code: 'stored-energy' | 'hazardous-energy' | 'turn-off-voltage' | 'static-field' | 'hot-surface';
+  readonly code: (typeof CAUTION_CODES)[number];
   readonly text: string;
 }
 

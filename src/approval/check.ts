@@ -48,6 +48,8 @@ export interface Observation {
   readonly atLeast?: boolean;
   /** The limit is met whatever the numbers, and why. */
   readonly metBecause?: string;
+  /** The limit is missed whatever the numbers, and why. */
+  readonly missedBecause?: string;
   /** The measured unit that this is about. */
   readonly serial?: string;
 }
@@ -56,4 +58,6 @@ export interface Observation {
 export interface Check {
   readonly name: CheckName;
   observe(request: ApprovalRequest): readonly Observation[];
+  /** Pointers to the inputs that could relieve it; those that the request does not give are passed over. */
+  readonly levers: readonly string[];
 }

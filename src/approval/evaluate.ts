@@ -2,8 +2,9 @@ import { propagateOverRecord } from '../metrology/propagation.ts';
 import type { Caution } from './cautions.ts';
 import type { Check, Observation } from './check.ts';
 import { CHECKS } from './checks/index.ts';
-import { type CheckResult, judge, mostAdverse } from './judge.ts';
+import { type CheckResult, type Judgement, judge, mostAdverse } from './judge.ts';
 import { LIMITS } from './limits.ts';
+import { reliefOf } from './relief.ts';
 import type { ApprovalRequest } from './request.ts';
 import { cautionsFor } from './request-cautions.ts';
 import { type Verdict, verdictOf } from './verdict.ts';
@@ -20,70 +21,65 @@ export interface Evaluation {
 const DEFAULT_RISK = 0.05;
 
 /**
- * Decides on a part, for a duty, with its evidence: observes every quantity that has a limit, judges each, and draws the verdict.
+ * Decides on a part, for a duty, with its evidence: observes every quantity that has a limit, judges each, says for each that
+ * does not pass what would make it pass, and draws the verdict.
  * Throws `InvalidQuantity`, pointing into the request, where its numbers contradict each other or leave a model.
  */
 export function evaluate(request: ApprovalRequest): Evaluation {
-  const risk = request.duty.risk ?? DEFAULT_RISK;
-  const observed = CHECKS.map((check) => ({ check, observations: check.observe(request) })).filter(
-    ({ observations }) => observations.length > 0,
-  );
-  const added = requestUncertainties(request, observed);
-  const results = observed.map(({ check, observations }) => checkResult(check, observations, risk, added));
+  const results = CHECKS.flatMap((check) => checkResult(check, request));
   const checks = [...results, ...untestedLimits(request, results)];
   return { ...verdictOf(request, checks), checks, cautions: cautionsFor(request) };
 }
 
-interface ObservedCheck {
-  readonly check: Check;
-  readonly observations: readonly Observation[];
+function checkResult(check: Check, request: ApprovalRequest): CheckResult[] {
+  const judgements = judgementsOf(check, request);
+  if (judgements.length === 0) return [];
+  const { serial, ...worst } = mostAdverse(judgements);
+  const passes = (changed: ApprovalRequest) => judgementsOf(check, changed).every(({ outcome }) => outcome === 'pass');
+  const result: CheckResult = {
+    check: check.name,
+    ...worst,
+    ...(worst.outcome !== 'pass' && { relief: reliefOf(check.levers, request, passes) }),
+  };
+  if (serial === undefined) return [result];
+  const passing = judgements.filter(({ outcome }) => outcome === 'pass').length;
+  const count = `${passing} of ${judgements.length} measured ${judgements.length === 1 ? 'units passes' : 'units pass'}`;
+  return [{ ...result, detail: `${count}; the most adverse: ${worst.detail}`, units: judgements }];
 }
 
-function checkResult(
-  { name }: Check,
-  observations: readonly Observation[],
-  risk: number,
-  added: ReadonlyMap<string, number>,
-): CheckResult {
-  const judgements = observations.map((observation, index) => judge(observation, risk, added.get(`${name}/${index}`) ?? 0));
-  const { serial, ...worst } = mostAdverse(judgements);
-  if (serial === undefined) return { check: name, ...worst };
-  const failing = judgements.filter(({ outcome }) => outcome !== 'pass').length;
-  const count = `${judgements.length - failing} of ${judgements.length} measured ${judgements.length === 1 ? 'unit passes' : 'units pass'}`;
-  return { check: name, ...worst, detail: `${count}; the most adverse: ${worst.detail}`, units: judgements };
+/** Every observation of a check, decided with all its uncertainty: model or instrument, and the request's own. */
+function judgementsOf(check: Check, request: ApprovalRequest): Judgement[] {
+  const risk = request.duty.risk ?? DEFAULT_RISK;
+  const observations = check.observe(request);
+  const added = requestUncertainties(check, request, observations);
+  return observations.map((observation, index) => judge(observation, risk, added[String(index)]?.standardUncertainty));
 }
 
 /**
- * What the uncertainty of the request's own numbers adds to each observation, by check and index: that of the distance to the
+ * What the uncertainty of the request's own numbers adds to each observation of a check, by index: that of the distance to the
  * nearest limit, since limit and quantity may hang on the same number (a saturation flux density, say).
  */
-function requestUncertainties(request: ApprovalRequest, observed: readonly ObservedCheck[]): ReadonlyMap<string, number> {
+function requestUncertainties(check: Check, request: ApprovalRequest, observations: readonly Observation[]) {
   const { uncertainty } = request;
-  if (!uncertainty || Object.keys(uncertainty).length === 0) return new Map();
-  const distances = (candidate: ApprovalRequest) =>
-    Object.fromEntries(
-      observed.flatMap(({ check, observations }) => {
-        const again = check.observe(candidate);
-        return observations.flatMap((reference, index) => {
-          const now = again[index];
-          if (reference.value === undefined || now?.value === undefined) return [];
-          return [[`${check.name}/${index}`, distanceToLimit(now, nearestSide(reference))]];
-        });
+  const sides = observations.map(nearestSide);
+  if (!uncertainty || sides.every((side) => side === undefined)) return {};
+  return propagateOverRecord(request, uncertainty, (candidate) => {
+    const again = check.observe(candidate);
+    return Object.fromEntries(
+      sides.flatMap((side, index) => {
+        const { value, limit } = again[index] ?? {};
+        return side === undefined || value === undefined ? [] : [[String(index), value - (limit?.[side] ?? 0)]];
       }),
     );
-  const outputs = propagateOverRecord(request, uncertainty, distances);
-  return new Map(Object.entries(outputs).map(([name, { standardUncertainty }]) => [name, standardUncertainty]));
+  });
 }
 
-type Side = 'lower' | 'upper';
-
-function nearestSide({ value = 0, limit: { lower, upper } }: Observation): Side {
+function nearestSide({ value, limit: { lower, upper } }: Observation): 'lower' | 'upper' | undefined {
+  if (value === undefined) return undefined;
   if (lower === undefined) return 'upper';
   if (upper === undefined) return 'lower';
   return value - lower <= upper - value ? 'lower' : 'upper';
 }
-
-const distanceToLimit = ({ value = 0, limit }: Observation, side: Side): number => value - (limit[side] ?? 0);
 
 /** An inconclusive check for each limit that is given and that nothing in the request could be compared with. */
 function untestedLimits(request: ApprovalRequest, results: readonly CheckResult[]): CheckResult[] {
@@ -94,7 +90,8 @@ function untestedLimits(request: ApprovalRequest, results: readonly CheckResult[
       outcome: 'inconclusive',
       limit: {},
       method: { name: 'none', references: [], relativeError: 1, validity: 'nothing to compute from' },
-      detail: `The limit at ${pointer} is given, but the request holds neither a construction nor evidence that it could be tested on.`,
+      detail: `The limit at ${pointer} is given, but the request holds nothing that it could be tested on.`,
+      relief: [],
     }),
   );
 }

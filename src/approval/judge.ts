@@ -1,6 +1,7 @@
 import { conformity } from '../metrology/conformity.ts';
 import type { Method } from '../physics/method.ts';
 import type { CheckLimit, CheckName, Observation } from './check.ts';
+import type { Relief } from './relief.ts';
 import { inWords, percent } from './wording.ts';
 
 export type Outcome = 'pass' | 'fail' | 'inconclusive';
@@ -28,6 +29,8 @@ export interface Judgement {
 /** A check's answer: its most adverse observation, and every unit's where it looked at measured units. */
 export interface CheckResult extends Omit<Judgement, 'serial'> {
   readonly check: CheckName;
+  /** On what did not pass: for each input, the smallest change that would make it pass. */
+  readonly relief?: readonly Relief[];
   readonly units?: readonly Judgement[];
 }
 
@@ -41,11 +44,9 @@ const SEVERITY: Record<Outcome, number> = { pass: 0, inconclusive: 1, fail: 2 };
 export function judge(observation: Observation, risk: number, requestUncertainty = 0): Judgement {
   const { what, unit, limit, method, value, serial } = observation;
   const common = { limit, method, ...(serial !== undefined && { serial }) };
-  if (observation.metBecause !== undefined) {
-    return { ...common, outcome: 'pass', detail: `${what}: ${observation.metBecause}; the limit is ${limitInWords(limit, unit)}.` };
-  }
   if (value === undefined) {
-    return { ...common, outcome: 'inconclusive', detail: `${what}: ${observation.undecided}; the limit is ${limitInWords(limit, unit)}.` };
+    const [outcome, because] = withoutValue(observation);
+    return { ...common, outcome, detail: `${what}: ${because}; the limit is ${limitInWords(limit, unit)}.` };
   }
   const standardUncertainty = Math.hypot(observation.standardUncertainty ?? 0, requestUncertainty);
   const decided = conformity({ measured: value, standardUncertainty, ...limit, rule: { kind: 'three-zone', risk } });
@@ -57,8 +58,15 @@ export function judge(observation: Observation, risk: number, requestUncertainty
     observed: { value, unit, standardUncertainty },
     margin: decided.margin,
     conformanceProbability: decided.conformanceProbability,
-    detail: sentence(observation, { value, standardUncertainty, outcome, ...decided, doubt, risk }),
+    detail: sentence(observation, { ...decided, value, standardUncertainty, outcome, doubt, risk }),
   };
+}
+
+/** The outcome of an observation that has no value, and why. */
+function withoutValue({ metBecause, missedBecause, undecided }: Observation): [Outcome, string] {
+  if (metBecause !== undefined) return ['pass', metBecause];
+  if (missedBecause !== undefined) return ['fail', missedBecause];
+  return ['inconclusive', undecided ?? 'it could not be observed'];
 }
 
 /** Why the numbers alone must not decide, where something of the observation says so. */
@@ -81,7 +89,8 @@ interface Decided {
 
 function sentence({ what, unit, limit, atLeast }: Observation, d: Decided): string {
   const observed = `${what} is ${atLeast ? 'at least ' : ''}${inWords(d.value, unit)}`;
-  const uncertainty = d.standardUncertainty > 0 ? ` (standard uncertainty ${inWords(d.standardUncertainty, unit)})` : '';
+  const uncertainty =
+    d.standardUncertainty > 0 ? ` (standard uncertainty ${inWords(d.standardUncertainty, unit)})` : '';
   const against = `, ${d.margin >= 0 ? 'inside' : 'outside'} the limit ${limitInWords(limit, unit)} by ${inWords(Math.abs(d.margin), unit)}`;
   if (d.doubt !== undefined) return `${observed}${uncertainty}${against}, but ${d.doubt}.`;
   if (d.outcome === 'inconclusive') {

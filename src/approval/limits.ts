@@ -41,6 +41,21 @@ export const LIMITS: readonly RequestedLimit[] = [
     checks: ['flux-density'],
   },
   {
+    pointer: '/duty/interruption/voltageLimit_V',
+    given: ({ duty }) => duty.interruption?.voltageLimit_V !== undefined,
+    checks: ['turn-off-voltage'],
+  },
+  {
+    pointer: '/duty/interruption/timeLimit_s',
+    given: ({ duty }) => duty.interruption?.timeLimit_s !== undefined,
+    checks: ['turn-off-time'],
+  },
+  {
+    pointer: '/duty/interruption/pathEnergyLimit_J',
+    given: ({ duty }) => duty.interruption?.pathEnergyLimit_J !== undefined,
+    checks: ['path-energy'],
+  },
+  {
     pointer: '/duty/strayField',
     given: ({ duty }) => duty.strayField !== undefined,
     checks: ['stray-field'],

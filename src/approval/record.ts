@@ -22,18 +22,17 @@ export function digestOf(value: unknown): string {
  * Seals a record: chains it to the one before and adds its own digest, so that a change of any recorded approval, or its
  * removal, shows in every later one.
  */
-export function seal<Body extends { readonly request: unknown }>(
-  body: Body,
+export function seal<Content extends object>(
+  request: unknown,
+  content: Content,
   previous: string | null,
-): Omit<Body, 'request'> & { readonly digests: Digests } {
-  const { request, ...content } = body;
+): Content & { readonly digests: Digests } {
   const input = digestOf(request);
   const record = digestOf({ ...content, digests: { input, previous } });
   return { ...content, digests: { input, record, previous } };
 }
 
 /** Whether a sealed record still is what was sealed. */
-export function isIntact(sealed: { readonly digests: Digests }): boolean {
-  const { digests, ...content } = sealed;
+export function isIntact<Sealed extends { readonly digests: Digests }>({ digests, ...content }: Sealed): boolean {
   return digestOf({ ...content, digests: { input: digests.input, previous: digests.previous } }) === digests.record;
 }

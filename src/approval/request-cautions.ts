@@ -1,12 +1,18 @@
 import { energyAt } from '../evidence/quantities.ts';
 import { isFieldCoil, limitDistances } from '../physics/fields/field.ts';
 import { type Caution, cautionsOf, type Hazards, IMPLANT_FLUX_DENSITY_T } from './cautions.ts';
+import { interruptionOf } from './checks/turn-off.ts';
 import { constructionCharacteristic } from './construction.ts';
 import type { ApprovalRequest } from './request.ts';
 
 /** The cautions of an approval: for the worst that its construction, its measured units and its duty can do. */
 export function cautionsFor(request: ApprovalRequest): Caution[] {
-  return cautionsOf({ storedEnergy_J: largestEnergy_J(request), ...strayField(request) });
+  const turnOff = interruptionOf(request);
+  return cautionsOf({
+    storedEnergy_J: largestEnergy_J(request),
+    ...(turnOff && { turnOffVoltage_V: turnOff.peakVoltage_V }),
+    ...strayField(request),
+  });
 }
 
 function largestEnergy_J({ part: { construction }, duty, evidence }: ApprovalRequest): number {

@@ -11,7 +11,8 @@ export function verdictOf(
   request: ApprovalRequest,
   checks: readonly CheckResult[],
 ): { readonly verdict: Verdict; readonly reasons: readonly string[] } {
-  const named = (outcome: CheckResult['outcome']) => checks.filter((result) => result.outcome === outcome).map(({ check }) => check);
+  const named = (outcome: CheckResult['outcome']) =>
+    checks.filter((result) => result.outcome === outcome).map(({ check }) => check);
   const failed = named('fail');
   const open = named('inconclusive');
   const measured = request.evidence?.units?.length ?? 0;

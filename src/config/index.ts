@@ -4,7 +4,7 @@ import { CoilproofError } from '../errors.ts';
 /** Checked and grouped; read once at start and passed down, never read again. */
 export interface Config {
   readonly listen: { readonly host: string; readonly port: number };
-  readonly store: { readonly dataDir: string };
+  readonly store: { readonly dataDir: string } | { readonly postgresUrl: string };
   readonly limits: { readonly bodyBytes: number; readonly requestTimeout_ms: number };
   readonly log: { readonly level: string };
 }
@@ -14,6 +14,10 @@ export const Environment = z.object({
   HOST: z.string().min(1).default('127.0.0.1').describe('address to listen on; loopback unless told otherwise'),
   PORT: z.coerce.number().int().min(0).max(65535).default(8080).describe('port to listen on; 0 takes a free one'),
   DATA_DIR: z.string().min(1).default('./data').describe('folder of the embedded store'),
+  DATABASE_URL: z
+    .url({ protocol: /^postgres(ql)?$/ })
+    .optional()
+    .describe('PostgreSQL in place of the embedded store'),
   LOG_LEVEL: z
     .enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent'])
     .default('info')
@@ -36,7 +40,9 @@ export const Environment = z.object({
 
 /** Reads the environment; throws `CoilproofError` naming every variable that is not usable. Empty counts as absent. */
 export function readConfig(environment: Readonly<Record<string, string | undefined>>): Config {
-  const given = Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== undefined && value !== ''));
+  const given = Object.fromEntries(
+    Object.entries(environment).filter(([, value]) => value !== undefined && value !== ''),
+  );
   const parsed = Environment.safeParse(given);
   if (!parsed.success) {
     const detail = parsed.error.issues.map(({ path, message }) => `${path.join('.')}: ${message}`).join('; ');
@@ -45,7 +51,7 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
   const e = parsed.data;
   return {
     listen: { host: e.HOST, port: e.PORT },
-    store: { dataDir: e.DATA_DIR },
+    store: e.DATABASE_URL === undefined ? { dataDir: e.DATA_DIR } : { postgresUrl: e.DATABASE_URL },
     limits: { bodyBytes: e.BODY_LIMIT_BYTES, requestTimeout_ms: e.REQUEST_TIMEOUT_MS },
     log: { level: e.LOG_LEVEL },
   };

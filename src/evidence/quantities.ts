@@ -1,6 +1,7 @@
 import { propagate } from '../metrology/propagation.ts';
-import type { FluxCharacteristic } from '../physics/characteristic.ts';
+import { differentialInductanceError, type FluxCharacteristic, methodAt } from '../physics/characteristic.ts';
 import { measuredCharacteristic, type Sweep } from '../physics/characteristics/measured.ts';
+import { within } from '../physics/invalid-quantity.ts';
 import { type Conductor, resistanceAtTemperature } from '../physics/losses/winding-resistance.ts';
 import type { Method } from '../physics/method.ts';
 import { dropCurrent_A } from '../physics/saturation.ts';
@@ -22,7 +23,12 @@ export interface Unavailable {
 
 /** Differential inductance at `current_A`, in H. Not extrapolated beyond the sweep. */
 export function inductanceAt(unit: Unit, current_A: number): MeasuredQuantity | Unavailable {
-  return fromSweep(unit, current_A, (characteristic) => characteristic.differentialInductance_H(current_A));
+  return fromSweep(
+    unit,
+    current_A,
+    (characteristic) => characteristic.differentialInductance_H(current_A),
+    (characteristic) => differentialInductanceError(characteristic, current_A),
+  );
 }
 
 /** Energy stored at `current_A`, ∫ i dλ along the sweep, in J. Not extrapolated beyond the sweep. */
@@ -38,13 +44,19 @@ export function dropCurrentOf(unit: Unit, inductanceDrop: number): MeasuredQuant
   const whole = measuredCharacteristic(unit.sweep);
   const reached = dropCurrent_A(whole, inductanceDrop) !== null;
   const quantity = fromSweep(unit, 0, (characteristic) =>
-    reached ? (dropCurrent_A(characteristic, inductanceDrop) ?? characteristic.maximumCurrent_A) : characteristic.maximumCurrent_A,
+    reached
+      ? (dropCurrent_A(characteristic, inductanceDrop) ?? characteristic.maximumCurrent_A)
+      : characteristic.maximumCurrent_A,
   );
   return reached || 'unavailable' in quantity ? quantity : { ...quantity, atLeast: true };
 }
 
 /** Resistance brought from the unit's temperature to `temperature_degC` by its conductor's law, in Ω. */
-export function resistanceAt(unit: Unit, temperature_degC: number, conductor: Conductor): MeasuredQuantity | Unavailable {
+export function resistanceAt(
+  unit: Unit,
+  temperature_degC: number,
+  conductor: Conductor,
+): MeasuredQuantity | Unavailable {
   const { resistance_ohm, instrument } = unit;
   if (resistance_ohm === undefined) return { unavailable: 'no resistance was measured' };
   const from_degC = unit.temperature_degC ?? temperature_degC;
@@ -68,29 +80,33 @@ function fromSweep(
   unit: Unit,
   current_A: number,
   quantity: (characteristic: FluxCharacteristic) => number,
+  errorBound = (characteristic: FluxCharacteristic) => methodAt(characteristic, current_A).relativeError,
 ): MeasuredQuantity | Unavailable {
-  const characteristic = measuredCharacteristic(unit.sweep);
+  const characteristic = within('/sweep', () => measuredCharacteristic(unit.sweep));
   if (current_A > characteristic.maximumCurrent_A) {
     return { unavailable: `the sweep ends at ${characteristic.maximumCurrent_A} A, before ${current_A} A` };
   }
   const { inductance, current } = unit.instrument;
-  const model = ([inductanceGain = 1, inductanceOffset_H = 0, currentGain = 1, currentOffset_A = 0]: ArrayLike<number> & Iterable<number>) =>
+  const readAs = ([inductanceGain = 1, inductanceOffset_H = 0, currentGain = 1, currentOffset_A = 0]: readonly number[]) =>
     quantity(
-      measuredCharacteristic(corrected(unit.sweep, { inductanceGain, inductanceOffset_H, currentGain, currentOffset_A })),
+      measuredCharacteristic(
+        corrected(unit.sweep, { inductanceGain, inductanceOffset_H, currentGain, currentOffset_A }),
+      ),
     );
-  const instrumental = propagate(model, [
+  const instrumental = propagate(readAs, [
     { name: 'inductance gain', value: 1, standardUncertainty: inductance?.relative ?? 0 },
     { name: 'inductance offset', value: 0, standardUncertainty: inductance?.offset_H ?? 0 },
     { name: 'current gain', value: 1, standardUncertainty: current?.relative ?? 0 },
     { name: 'current offset', value: 0, standardUncertainty: current?.offset_A ?? 0 },
   ]);
   const value = quantity(characteristic);
-  // A bound on the model's own error becomes a standard uncertainty as a rectangular distribution does, JCGM 100 4.3.7.
-  const interpolation = (characteristic.method.relativeError * Math.abs(value)) / Math.sqrt(3);
+  const relativeError = errorBound(characteristic);
+  // A bound on the interpolation's error becomes a standard uncertainty as a rectangular distribution does, JCGM 100 4.3.7.
+  const interpolation = (relativeError * Math.abs(value)) / Math.sqrt(3);
   return {
     value,
     standardUncertainty: Math.hypot(instrumental.standardUncertainty, interpolation),
-    method: characteristic.method,
+    method: { ...characteristic.method, relativeError },
   };
 }
 

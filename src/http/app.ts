@@ -1,11 +1,12 @@
 import { randomUUID } from 'node:crypto';
+import underPressure from '@fastify/under-pressure';
 import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastify';
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
-import { CoilproofError } from '../errors.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
+import { unmatched } from './plugins/unmatched.ts';
 import { sendProblem } from './problems.ts';
 import { approvals } from './routes/approvals/index.ts';
 import { calculations } from './routes/calculations/index.ts';
@@ -20,6 +21,9 @@ export interface AppOptions {
 
 const REQUEST_ID = /^[\w.-]{1,64}$/;
 
+/** Beyond this delay of the event loop requests are turned away with 503, so that those under way still end. */
+const MAXIMUM_EVENT_LOOP_DELAY_MS = 5000;
+
 /** The service as an unstarted server: plugins in order, then the routes. Listening and signals are the caller's. */
 export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   const app = Fastify({
@@ -28,6 +32,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
     requestTimeout: options.limits.requestTimeout_ms,
     handlerTimeout: options.limits.requestTimeout_ms,
     return503OnClosing: true,
+    frameworkErrors: sendProblem,
     genReqId: (request) => {
       const given = request.headers['x-request-id'];
       return typeof given === 'string' && REQUEST_ID.test(given) ? given : randomUUID();
@@ -37,15 +42,19 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   app.setValidatorCompiler(validatorCompiler);
   app.setSerializerCompiler(serializerCompiler);
   app.setErrorHandler(sendProblem);
-  app.setNotFoundHandler((request, reply) => sendProblem(noRoute(app, request.method, request.url, reply), request, reply));
+  unmatched(app);
   app.addHook('onRequest', async (request, reply) => {
-    reply.header('x-request-id', request.id).header('x-content-type-options', 'nosniff').header('cache-control', 'no-store');
+    reply
+      .header('x-request-id', request.id)
+      .header('x-content-type-options', 'nosniff')
+      .header('cache-control', 'no-store');
   });
   app.addHook('preSerialization', async (_request, _reply, payload) => {
     assertFinite(payload);
     return payload;
   });
 
+  await app.register(underPressure, { maxEventLoopDelay: MAXIMUM_EVENT_LOOP_DELAY_MS, retryAfter: 5 });
   await openapi(app, options.version);
   metrics(app);
   health(app, () => options.desk.store.ping());
@@ -53,19 +62,4 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   approvals(app, options.desk);
   app.get('/openapi.json', { schema: { hide: true } }, async () => app.swagger());
   return app;
-}
-
-const METHODS = ['GET', 'PUT', 'POST', 'DELETE'] as const;
-
-function noRoute(
-  app: FastifyInstance,
-  method: string,
-  url: string,
-  reply: { header(name: string, value: string): unknown },
-): CoilproofError {
-  const path = url.split('?', 1)[0] ?? url;
-  const allowed = METHODS.filter((candidate) => candidate !== method && app.findRoute({ method: candidate, url: path }));
-  if (allowed.length === 0) return new CoilproofError('not-found', `There is nothing at ${path}.`);
-  reply.header('allow', allowed.join(', '));
-  return new CoilproofError('method-not-allowed', `${path} answers ${allowed.join(', ')}.`);
 }

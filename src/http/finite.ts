@@ -8,10 +8,13 @@ import { pointerOf } from './schema-issues.ts';
 export function assertFinite(answer: unknown, path: readonly PropertyKey[] = []): void {
   if (typeof answer === 'number') {
     if (!Number.isFinite(answer)) {
-      throw new CoilproofError('number-range', `The result at ${pointerOf(path)} over- or underflows for these inputs.`);
+      throw new CoilproofError(
+        'number-range',
+        `The result at ${pointerOf(path)} over- or underflows for these inputs.`,
+      );
     }
   } else if (Array.isArray(answer)) {
-    answer.forEach((value, index) => assertFinite(value, [...path, index]));
+    for (const [index, value] of answer.entries()) assertFinite(value, [...path, index]);
   } else if (answer !== null && typeof answer === 'object') {
     for (const [key, value] of Object.entries(answer)) assertFinite(value, [...path, key]);
   }

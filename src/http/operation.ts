@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import type { z } from 'zod';
 import { ERROR_CATALOGUE, type ErrorCode } from '../errors.ts';
 import { Problem, STATUS } from './problems.ts';
 

@@ -12,7 +12,9 @@ export const Problem = z
     title: z.string(),
     status: z.int(),
     detail: z.string(),
-    instance: z.string().meta({ description: 'urn:coilproof:request:<id>, the id under which the log has this request' }),
+    instance: z
+      .string()
+      .meta({ description: 'urn:coilproof:request:<id>, the id under which the log has this request' }),
     errors: z
       .array(z.object({ pointer: z.string(), detail: z.string() }))
       .exactOptional()
@@ -74,10 +76,18 @@ function fromValidation(
   request: FastifyRequest,
 ): CoilproofError {
   const issues = (error.validation as { instancePath: string; keyword: string; message: string; params: object }[]).map(
-    (entry) => ({ ...entry.params, code: entry.keyword, message: entry.message, path: pathOf(entry.instancePath) }) as SchemaIssue,
+    (entry) =>
+      ({
+        ...entry.params,
+        code: entry.keyword,
+        message: entry.message,
+        path: pathOf(entry.instancePath),
+      }) as SchemaIssue,
   );
   if (error.validationContext !== undefined && error.validationContext !== 'body') {
-    const detail = issues.map((issue) => `${issue.path.join('.') || error.validationContext}: ${issue.message}`).join('; ');
+    const detail = issues
+      .map((issue) => `${issue.path.join('.') || error.validationContext}: ${issue.message}`)
+      .join('; ');
     return new CoilproofError('invalid-parameter', detail);
   }
   if (request.body === undefined || request.body === null) {
@@ -99,7 +109,8 @@ const summarise = (fields: readonly FieldError[]): string =>
 export function sendProblem(error: unknown, request: FastifyRequest, reply: FastifyReply): FastifyReply {
   const problem = toCoilproofError(error, request);
   const status = STATUS[problem.code];
-  if (status >= 500 && problem.code === 'internal') request.log.error({ err: problem.cause ?? problem }, 'request failed');
+  if (status >= 500 && problem.code === 'internal')
+    request.log.error({ err: problem.cause ?? problem }, 'request failed');
   else request.log.info({ code: problem.code, detail: problem.message }, 'request refused');
   if (status === 503) reply.header('retry-after', '5');
   return reply

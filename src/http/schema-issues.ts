@@ -15,7 +15,9 @@ export const pointerOf = (path: readonly PropertyKey[]): string =>
 
 /** zod's issues as errors that name the field: unknown keys one by one, unions by the form that the body was closest to. */
 export function fieldErrors(issues: readonly SchemaIssue[], body: unknown): FieldError[] {
-  return issues.flatMap((issue) => flatten(issue, [], body)).map(({ path, detail }) => ({ pointer: pointerOf(path), detail }));
+  return issues
+    .flatMap((issue) => flatten(issue, [], body))
+    .map(({ path, detail }) => ({ pointer: pointerOf(path), detail }));
 }
 
 interface Found {
@@ -47,7 +49,9 @@ function closestForm(forms: readonly (readonly SchemaIssue[])[]): readonly Schem
       if (issue.code === 'unrecognized_keys') return sum + 4 * (issue.keys?.length ?? 1);
       return sum + (issue.path.length <= 1 ? 2 : 1);
     }, 0);
-  const ranked = forms.map((issues) => ({ issues, distance: distance(issues) })).sort((a, b) => a.distance - b.distance);
+  const ranked = forms
+    .map((issues) => ({ issues, distance: distance(issues) }))
+    .sort((a, b) => a.distance - b.distance);
   const [best, next] = ranked;
   if (!best || (next && next.distance === best.distance)) return undefined;
   return best.issues;

@@ -1,10 +1,15 @@
 import type { Kysely } from 'kysely';
 import type { Tables } from './tables.ts';
 
-/** An open store. Reads go to `db`; every write goes through `write`, whatever the engine. */
+export type Engine = 'sqlite' | 'postgres';
+
+/** An open store, whatever the engine. Reads go to `db`; writes through `write` or `exclusive`. */
 export interface Database {
+  readonly engine: Engine;
   readonly db: Kysely<Tables>;
-  /** Runs `work` in one transaction that nothing else writes beside; committed, durably, when the promise resolves. */
+  /** Runs `work` in one transaction; it is durable when the promise resolves, and nothing of it is left when it rejects. */
   write<T>(work: (transaction: Kysely<Tables>) => Promise<T>): Promise<T>;
+  /** The same, while no other process or request is in `exclusive` of the same name: for what must not fork, such as a chain. */
+  exclusive<T>(name: string, work: (transaction: Kysely<Tables>) => Promise<T>): Promise<T>;
   close(): Promise<void>;
 }

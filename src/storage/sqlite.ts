@@ -14,30 +14,39 @@ export async function openSqlite(dataDir: string): Promise<Database> {
   const inMemory = dataDir === ':memory:';
   if (!inMemory) mkdirSync(dataDir, { recursive: true });
   const file = new DatabaseSync(inMemory ? ':memory:' : join(dataDir, 'coilproof.sqlite'));
-  file.exec('PRAGMA busy_timeout = 5000; PRAGMA journal_mode = WAL; PRAGMA synchronous = FULL; PRAGMA foreign_keys = ON;');
+  file.exec(
+    'PRAGMA busy_timeout = 5000; PRAGMA journal_mode = WAL; PRAGMA synchronous = FULL; PRAGMA foreign_keys = ON;',
+  );
   const statements = new Map<string, StatementSync>();
   const db = new Kysely<Tables>({
-    dialect: new SqliteDialect({ database: { close: () => file.close(), prepare: (text) => prepare(file, statements, text) } }),
+    dialect: new SqliteDialect({
+      database: { close: () => file.close(), prepare: (text) => prepare(file, statements, text) },
+    }),
   });
-  const exclusive = createLock();
-  await exclusive(() => migrate(db));
+  const oneAtATime = createLock();
 
+  const write: Database['write'] = (work) =>
+    oneAtATime(async () => {
+      // IMMEDIATE: another process on the same file waits here, rather than fail when it comes to write.
+      await sql`begin immediate`.execute(db);
+      try {
+        const result = await work(db);
+        await sql`commit`.execute(db);
+        return result;
+      } catch (error) {
+        await sql`rollback`.execute(db);
+        throw error;
+      }
+    });
+  // Kysely's own migration lock does nothing in SQLite; inside a write, a second process waits and finds the work done.
+  await write(() => migrate(db, 'sqlite'));
   return {
+    engine: 'sqlite',
     db,
-    write: (work) =>
-      exclusive(async () => {
-        // IMMEDIATE: another process on the same file waits here, rather than fail when it comes to write.
-        await sql`begin immediate`.execute(db);
-        try {
-          const result = await work(db);
-          await sql`commit`.execute(db);
-          return result;
-        } catch (error) {
-          await sql`rollback`.execute(db);
-          throw error;
-        }
-      }),
-    close: () => exclusive(() => db.destroy()),
+    write,
+    // The file has one writer at a time: every write is exclusive.
+    exclusive: (_name, work) => write(work),
+    close: () => oneAtATime(() => db.destroy()),
   };
 }
 

@@ -1,24 +1,9 @@
-import { mkdtempSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import type { Approval } from '../../src/approval/approval.ts';
 import { digestOf, isIntact, seal } from '../../src/approval/record.ts';
 import { approvalStore } from '../../src/storage/approvals.ts';
 import type { Database } from '../../src/storage/database.ts';
-import { openSqlite } from '../../src/storage/sqlite.ts';
-
-let folder: string;
-let database: Database;
-
-beforeEach(async () => {
-  folder = mkdtempSync(join(tmpdir(), 'coilproof-'));
-  database = await openSqlite(folder);
-});
-afterEach(async () => {
-  await database.close();
-  rmSync(folder, { recursive: true });
-});
+import { STORES, type StorePlace } from '../support/stores.ts';
 
 let count = 0;
 const make =
@@ -26,8 +11,8 @@ const make =
   (previous: string | null): Approval => {
     count += 1;
     return seal(
+      { n: count },
       {
-        request: { n: count },
         id: `a${count}`,
         verdict: 'approve',
         reasons: [],
@@ -38,17 +23,28 @@ const make =
         engine: { version: '0' },
         recordedAt: '2026-01-01T00:00:00.000Z',
         ...over,
-      } as Approval & { request: unknown },
+      } as Omit<Approval, 'digests'>,
       previous,
-    ) as Approval;
+    );
   };
 
-describe('the approval store', () => {
+describe.each(STORES)('the approval store in $engine', ({ make: makePlace }) => {
+  let place: StorePlace;
+  let database: Database;
+  beforeEach(async () => {
+    place = await makePlace();
+    database = await place.open();
+  });
+  afterEach(async () => {
+    await database.close();
+    await place.remove();
+  });
+
   it('chains records: each names the digest of the one before, and all are intact', async () => {
     const store = approvalStore(database);
     const appended = await Promise.all(Array.from({ length: 20 }, () => store.append(make())));
     const listed = await store.list({ limit: 100 });
-    expect(listed).toEqual(appended);
+    expect(listed).toEqual(appended.sort((a, b) => a.position - b.position));
     listed.forEach(({ approval }, index) => {
       expect(approval.digests.previous).toBe(listed[index - 1]?.approval.digests.record ?? null);
       expect(isIntact(approval)).toBe(true);
@@ -62,7 +58,9 @@ describe('the approval store', () => {
     const first = await store.append(make(), { key: 'k', inputDigest });
     expect(first.approval.digests.input).toBe(inputDigest);
     expect(await store.append(make(), { key: 'k', inputDigest })).toEqual(first);
-    await expect(store.append(make(), { key: 'k', inputDigest: 'other' })).rejects.toMatchObject({ code: 'idempotency-conflict' });
+    await expect(store.append(make(), { key: 'k', inputDigest: 'other' })).rejects.toMatchObject({
+      code: 'idempotency-conflict',
+    });
     expect(await store.list({ limit: 10 })).toHaveLength(1);
   });
 
@@ -89,7 +87,7 @@ describe('the approval store', () => {
 
   it('has every record after it is opened again, by another handle on the same file too', async () => {
     const first = await approvalStore(database).append(make());
-    const beside = await openSqlite(folder);
+    const beside = await place.open();
     const second = await approvalStore(beside).append(make());
     expect(second.approval.digests.previous).toBe(first.approval.digests.record);
     expect(await approvalStore(database).get(second.approval.id)).toEqual(second.approval);

@@ -7,6 +7,7 @@ import { measuredEnergy, measuredInductance, measuredResistance, measuredSaturat
 import { saturationCurrent } from './saturation-current.ts';
 import { storedEnergy } from './stored-energy.ts';
 import { strayField } from './stray-field.ts';
+import { pathEnergy, turnOffTime, turnOffVoltage } from './turn-off.ts';
 import { windingResistance } from './winding-resistance.ts';
 
 /** Every check, in the order in which an approval lists them. */
@@ -18,6 +19,9 @@ export const CHECKS: readonly Check[] = [
   storedEnergy,
   coreEnergyCapacity,
   windingResistance,
+  turnOffVoltage,
+  turnOffTime,
+  pathEnergy,
   strayField,
   measuredInductance,
   measuredSaturation,

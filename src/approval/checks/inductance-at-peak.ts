@@ -1,23 +1,21 @@
 import type { Check } from '../check.ts';
-import { atTemperature, constructionCharacteristic, modelUncertainty } from '../construction.ts';
+import { atTemperature, COIL_LEVERS, constructionCharacteristic, observedInductance } from '../construction.ts';
 import { inWords } from '../wording.ts';
 
 /** Does the part still hold its inductance at the duty's peak current, hot? The differential one: that is what ripple meets. */
 export const inductanceAtPeak: Check = {
   name: 'inductance-at-peak',
+  levers: [...COIL_LEVERS, '/duty/peakCurrent_A', '/duty/required/inductanceAtPeak_H'],
   observe({ part: { construction }, duty }) {
     const lower = duty.required?.inductanceAtPeak_H;
     if (lower === undefined || !construction) return [];
     const characteristic = constructionCharacteristic(construction, duty.coreTemperature_degC);
-    const value = characteristic.differentialInductance_H(duty.peakCurrent_A);
     return [
       {
         what: `Differential inductance at ${inWords(duty.peakCurrent_A, 'A')}${atTemperature(duty.coreTemperature_degC)}`,
         unit: 'H',
         limit: { lower },
-        value,
-        standardUncertainty: modelUncertainty(value, characteristic.method),
-        method: characteristic.method,
+        ...observedInductance(characteristic, duty.peakCurrent_A),
       },
     ];
   },

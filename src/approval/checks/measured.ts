@@ -1,4 +1,3 @@
-import { within } from '../../physics/invalid-quantity.ts';
 import {
   dropCurrentOf,
   energyAt,
@@ -8,6 +7,7 @@ import {
   type Unavailable,
 } from '../../evidence/quantities.ts';
 import type { Unit } from '../../evidence/unit.ts';
+import { within } from '../../physics/invalid-quantity.ts';
 import type { Method } from '../../physics/method.ts';
 import type { Check, CheckLimit, CheckName, Observation } from '../check.ts';
 import type { ApprovalRequest } from '../request.ts';
@@ -30,9 +30,14 @@ interface Measurement {
 }
 
 /** A check that observes every measured unit in the same way; `plan` says how, or undefined where its limit is not given. */
-function measuredCheck(name: CheckName, plan: (request: ApprovalRequest) => Measurement | undefined): Check {
+function measuredCheck(
+  name: CheckName,
+  levers: readonly string[],
+  plan: (request: ApprovalRequest) => Measurement | undefined,
+): Check {
   return {
     name,
+    levers,
     observe(request) {
       const units = request.evidence?.units ?? [];
       const measurement = units.length > 0 ? plan(request) : undefined;
@@ -62,51 +67,67 @@ function observeUnit(unit: Unit, { what, unit: symbol, limit, temperature_degC, 
 const NOT_MEASURED: Method = { name: 'none', references: [], relativeError: 1, validity: 'nothing was measured' };
 
 /** Is each unit's inductance at the drawing's test current within the drawing's limits? */
-export const measuredInductance = measuredCheck('measured-inductance', ({ part: { drawing } }) => {
-  if (!drawing) return undefined;
-  const { lower_H, upper_H, testCurrent_A = 0 } = drawing.inductance;
-  return {
-    what: `Inductance at ${inWords(testCurrent_A, 'A')}`,
-    unit: 'H',
-    limit: { lower: lower_H, upper: upper_H },
-    measure: (unit) => inductanceAt(unit, testCurrent_A),
-  };
-});
+export const measuredInductance = measuredCheck(
+  'measured-inductance',
+  ['/part/drawing/inductance/lower_H', '/part/drawing/inductance/upper_H'],
+  ({ part: { drawing } }) => {
+    if (!drawing) return undefined;
+    const { lower_H, upper_H, testCurrent_A = 0 } = drawing.inductance;
+    return {
+      what: `Inductance at ${inWords(testCurrent_A, 'A')}`,
+      unit: 'H',
+      limit: { lower: lower_H, upper: upper_H },
+      measure: (unit) => inductanceAt(unit, testCurrent_A),
+    };
+  },
+);
 
 /** Does each unit carry the drawing's current before its inductance has dropped by the drawing's share? */
-export const measuredSaturation = measuredCheck('measured-saturation', ({ part: { drawing } }) => {
-  if (!drawing?.saturation) return undefined;
-  const { current_A, inductanceDrop, temperature_degC } = drawing.saturation;
-  return {
-    what: `Current for an inductance drop of ${percent(inductanceDrop)}`,
-    unit: 'A',
-    limit: { lower: current_A },
-    temperature_degC,
-    measure: (unit) => dropCurrentOf(unit, inductanceDrop),
-  };
-});
+export const measuredSaturation = measuredCheck(
+  'measured-saturation',
+  ['/part/drawing/saturation/current_A', '/part/drawing/saturation/inductanceDrop'],
+  ({ part: { drawing } }) => {
+    if (!drawing?.saturation) return undefined;
+    const { current_A, inductanceDrop, temperature_degC } = drawing.saturation;
+    return {
+      what: `Current for an inductance drop of ${percent(inductanceDrop)}`,
+      unit: 'A',
+      limit: { lower: current_A },
+      temperature_degC,
+      measure: (unit) => dropCurrentOf(unit, inductanceDrop),
+    };
+  },
+);
 
 /** Does each unit store the duty's energy at the duty's peak current? */
-export const measuredEnergy = measuredCheck('measured-energy', ({ duty }) => {
-  const lower = duty.required?.storedEnergy_J;
-  if (lower === undefined) return undefined;
-  return {
-    what: `Stored energy at ${inWords(duty.peakCurrent_A, 'A')}`,
-    unit: 'J',
-    limit: { lower },
-    temperature_degC: duty.coreTemperature_degC,
-    measure: (unit) => energyAt(unit, duty.peakCurrent_A),
-  };
-});
+export const measuredEnergy = measuredCheck(
+  'measured-energy',
+  ['/duty/peakCurrent_A', '/duty/required/storedEnergy_J'],
+  ({ duty }) => {
+    const lower = duty.required?.storedEnergy_J;
+    if (lower === undefined) return undefined;
+    return {
+      what: `Stored energy at ${inWords(duty.peakCurrent_A, 'A')}`,
+      unit: 'J',
+      limit: { lower },
+      temperature_degC: duty.coreTemperature_degC,
+      measure: (unit) => energyAt(unit, duty.peakCurrent_A),
+    };
+  },
+);
 
 /** Does each unit's resistance, brought to the drawing's temperature, stay below the drawing's? */
-export const measuredResistance = measuredCheck('measured-resistance', ({ part: { drawing, construction }, evidence }) => {
-  if (!drawing?.resistance || !evidence?.units?.some((unit) => unit.resistance_ohm !== undefined)) return undefined;
-  const { upper_ohm, temperature_degC } = drawing.resistance;
-  return {
-    what: `Resistance brought to ${inWords(temperature_degC, '°C')}`,
-    unit: 'Ω',
-    limit: { upper: upper_ohm },
-    measure: (unit) => resistanceAt(unit, temperature_degC, construction?.winding?.conductor ?? 'copper'),
-  };
-});
+export const measuredResistance = measuredCheck(
+  'measured-resistance',
+  ['/part/drawing/resistance/upper_ohm'],
+  ({ part: { drawing, construction }, evidence }) => {
+    if (!drawing?.resistance || !evidence?.units?.some((unit) => unit.resistance_ohm !== undefined)) return undefined;
+    const { upper_ohm, temperature_degC } = drawing.resistance;
+    return {
+      what: `Resistance brought to ${inWords(temperature_degC, '°C')}`,
+      unit: 'Ω',
+      limit: { upper: upper_ohm },
+      measure: (unit) => resistanceAt(unit, temperature_degC, construction?.winding?.conductor ?? 'copper'),
+    };
+  },
+);

@@ -1,11 +1,13 @@
+import { methodAt } from '../../physics/characteristic.ts';
 import { dropCurrent_A } from '../../physics/saturation.ts';
 import type { Check } from '../check.ts';
-import { constructionCharacteristic, modelUncertainty } from '../construction.ts';
+import { COIL_LEVERS, constructionCharacteristic, observed } from '../construction.ts';
 import { inWords, percent } from '../wording.ts';
 
 /** Does the construction carry the drawing's current before its differential inductance has dropped by the drawing's share? */
 export const saturationCurrent: Check = {
   name: 'saturation-current',
+  levers: [...COIL_LEVERS, '/part/drawing/saturation/current_A', '/part/drawing/saturation/inductanceDrop'],
   observe({ part: { drawing, construction } }) {
     if (!drawing?.saturation || !construction) return [];
     const { current_A, inductanceDrop, temperature_degC } = drawing.saturation;
@@ -18,6 +20,6 @@ export const saturationCurrent: Check = {
       method: characteristic.method,
     };
     if (value === null) return [{ ...common, metBecause: `the inductance never drops by ${percent(inductanceDrop)}` }];
-    return [{ ...common, value, standardUncertainty: modelUncertainty(value, characteristic.method) }];
+    return [{ ...common, ...observed(value, methodAt(characteristic, value)) }];
   },
 };

@@ -1,12 +1,18 @@
 import { fieldMethod, isFieldCoil, worstFieldAtDistance } from '../../physics/fields/field.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import type { Check } from '../check.ts';
-import { modelUncertainty } from '../construction.ts';
+import { observed } from '../construction.ts';
 import { inWords } from '../wording.ts';
 
 /** Does the field stay below the limit at the duty's distance, in the worst direction, at peak current? */
 export const strayField: Check = {
   name: 'stray-field',
+  levers: [
+    '/part/construction/coil/turns',
+    '/duty/peakCurrent_A',
+    '/duty/strayField/distance_m',
+    '/duty/strayField/limit_T',
+  ],
   observe({ part: { construction }, duty: { strayField: place, peakCurrent_A } }) {
     if (!place || !construction) return [];
     const { coil } = construction;
@@ -24,8 +30,9 @@ export const strayField: Check = {
       };
       return [{ ...common, method, undecided: `the stray field of a ${coil.shape} winding is not calculated here` }];
     }
-    const { magnitude_T } = within('/duty/strayField', () => worstFieldAtDistance(coil, peakCurrent_A, place.distance_m));
-    const method = fieldMethod(coil);
-    return [{ ...common, value: magnitude_T, standardUncertainty: modelUncertainty(magnitude_T, method), method }];
+    const { magnitude_T } = within('/duty/strayField', () =>
+      worstFieldAtDistance(coil, peakCurrent_A, place.distance_m),
+    );
+    return [{ ...common, ...observed(magnitude_T, fieldMethod(coil)) }];
   },
 };

@@ -1,12 +1,13 @@
 import { within } from '../../physics/invalid-quantity.ts';
 import { windingResistance as resistanceOf } from '../../physics/losses/winding-resistance.ts';
 import type { Check } from '../check.ts';
-import { modelUncertainty, WINDING_POINTER } from '../construction.ts';
+import { observed, WINDING_LEVERS, WINDING_POINTER } from '../construction.ts';
 import { inWords } from '../wording.ts';
 
 /** Does the winding as constructed stay below the drawing's resistance at the drawing's temperature? */
 export const windingResistance: Check = {
   name: 'winding-resistance',
+  levers: [...WINDING_LEVERS, '/part/drawing/resistance/upper_ohm'],
   observe({ part: { drawing, construction } }) {
     const winding = construction?.winding;
     if (!drawing?.resistance || !winding) return [];
@@ -17,9 +18,7 @@ export const windingResistance: Check = {
         what: `Winding resistance at ${inWords(temperature_degC, '°C')}`,
         unit: 'Ω',
         limit: { upper: upper_ohm },
-        value: resistance_ohm,
-        standardUncertainty: modelUncertainty(resistance_ohm, method),
-        method,
+        ...observed(resistance_ohm, method),
       },
     ];
   },

@@ -14,7 +14,12 @@ export async function openapi(app: FastifyInstance, version: string): Promise<vo
   await app.register(swagger, {
     openapi: {
       openapi: '3.1.0',
-      info: { title: 'coilproof', version, description: DESCRIPTION, license: { name: 'Apache-2.0', identifier: 'Apache-2.0' } },
+      info: {
+        title: 'coilproof',
+        version,
+        description: DESCRIPTION,
+        license: { name: 'Apache-2.0', identifier: 'Apache-2.0' },
+      },
       tags: [
         { name: 'approval', description: 'may this part go in?' },
         { name: 'calculation', description: 'nothing stored' },

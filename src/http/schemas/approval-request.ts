@@ -6,11 +6,17 @@ import type { Instrument } from '../../evidence/instrument.ts';
 import type { Unit } from '../../evidence/unit.ts';
 import { CoilSchema } from './coils.ts';
 import { SweepSchema, WindingSchema } from './inductor.ts';
+import { list } from './list.ts';
 import { PathSchema } from './path.ts';
 import * as q from './quantities.ts';
 import { UncertaintyMap } from './uncertainty.ts';
 
-const text = (longest: number) => z.string().min(1).max(longest).regex(/^[^\p{Cc}]*$/u, 'must not hold control characters');
+const text = (longest: number) =>
+  z
+    .string()
+    .min(1)
+    .max(longest)
+    .regex(/^[^\p{Cc}]*$/u, 'must not hold control characters');
 
 const DrawingSchema = z
   .strictObject({
@@ -58,12 +64,10 @@ export const DutySchema = z
       .strictObject({
         inductanceAtPeak_H: q.inductance_H.exactOptional(),
         storedEnergy_J: q.energy_J.exactOptional(),
-        fluxMargin: z
-          .number()
-          .min(0)
-          .lt(1)
-          .exactOptional()
-          .meta({ description: 'how far below saturation the flux density must stay, as a fraction of the saturation flux density' }),
+        fluxMargin: z.number().min(0).lt(1).exactOptional().meta({
+          description:
+            'how far below saturation the flux density must stay, as a fraction of the saturation flux density',
+        }),
       })
       .exactOptional(),
     interruption: z
@@ -95,7 +99,8 @@ export const InstrumentSchema = z
   })
   .meta({
     id: 'Instrument',
-    description: 'standard uncertainties (k = 1): a gain relative to the reading and an offset, each common to all readings',
+    description:
+      'standard uncertainties (k = 1): a gain relative to the reading and an offset, each common to all readings',
   }) satisfies z.ZodType<Instrument>;
 
 export const UnitSchema = z
@@ -113,7 +118,7 @@ export const ApprovalRequestSchema = z
   .strictObject({
     part: PartSchema,
     duty: DutySchema,
-    evidence: z.strictObject({ units: z.array(UnitSchema).max(1000).exactOptional() }).exactOptional(),
+    evidence: z.strictObject({ units: list(UnitSchema, { max: 1000 }).exactOptional() }).exactOptional(),
     uncertainty: UncertaintyMap.exactOptional(),
   })
   .meta({ id: 'ApprovalRequest' }) satisfies z.ZodType<ApprovalRequest>;

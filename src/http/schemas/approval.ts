@@ -2,6 +2,7 @@ import { z } from 'zod';
 import type { Approval } from '../../approval/approval.ts';
 import { CHECK_NAMES } from '../../approval/check.ts';
 import { DutySchema, PartSchema, UnitSchema } from './approval-request.ts';
+import { list } from './list.ts';
 import { CautionSchema, MethodSchema } from './method.ts';
 import { UncertaintyMap } from './uncertainty.ts';
 
@@ -27,8 +28,20 @@ export const CheckSchema = z
   .object({
     check: z.enum(CHECK_NAMES),
     ...judgement,
-    units: z
-      .array(z.object({ serial: z.string().exactOptional(), ...judgement }))
+    relief: list(
+      z.object({
+        pointer: z.string(),
+        from: z.number(),
+        to: z.number().nullable(),
+        reason: z.string().exactOptional(),
+      }),
+    )
+      .exactOptional()
+      .meta({
+        description:
+          'on what did not pass: for each input, the smallest change of it alone that makes the check pass; to is null, with a reason, where no value does',
+      }),
+    units: list(z.object({ serial: z.string().exactOptional(), ...judgement }))
       .exactOptional()
       .meta({ description: 'each measured unit; the check itself answers with the most adverse' }),
   })
@@ -38,17 +51,17 @@ export const ApprovalSchema = z
   .object({
     id: z.string(),
     verdict: VerdictSchema,
-    reasons: z.array(z.string()),
+    reasons: list(z.string()),
     part: PartSchema,
     duty: DutySchema,
-    evidence: z.object({ units: z.array(UnitSchema).exactOptional() }).exactOptional(),
+    evidence: z.object({ units: list(UnitSchema).exactOptional() }).exactOptional(),
     uncertainty: UncertaintyMap.exactOptional(),
-    checks: z.array(CheckSchema),
-    cautions: z.array(CautionSchema),
+    checks: list(CheckSchema),
+    cautions: list(CautionSchema),
     engine: z.object({ version: z.string() }),
-    digests: z
-      .object({ input: z.string(), record: z.string(), previous: z.string().nullable() })
-      .meta({ description: 'SHA-256 over canonical JSON (RFC 8785); previous is the record digest of the approval before' }),
+    digests: z.object({ input: z.string(), record: z.string(), previous: z.string().nullable() }).meta({
+      description: 'SHA-256 over canonical JSON (RFC 8785); previous is the record digest of the approval before',
+    }),
     recordedAt: z.string(),
   })
   .meta({ id: 'Approval', description: 'a recorded decision' }) satisfies z.ZodType<unknown, Approval>;

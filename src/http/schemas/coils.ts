@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import type { Coil } from '../../physics/coil.ts';
-import { Core } from './core.ts';
+import { CoreSchema } from './core.ts';
 import { length_m, lengthOrZero_m, relativePermeability, turns } from './quantities.ts';
 
 export const Solenoid = z
@@ -35,7 +35,12 @@ export const RoundLoop = z
   .meta({ id: 'RoundLoop', description: 'circle of round wire, uniform current density' });
 
 export const RectangularLoop = z
-  .strictObject({ shape: z.literal('rectangular-loop'), sideA_m: length_m, sideB_m: length_m, wireDiameter_m: length_m })
+  .strictObject({
+    shape: z.literal('rectangular-loop'),
+    sideA_m: length_m,
+    sideB_m: length_m,
+    wireDiameter_m: length_m,
+  })
   .meta({ id: 'RectangularLoop', description: 'rectangle of round wire; sides along the centre line' });
 
 export const StraightWire = z
@@ -99,7 +104,7 @@ const CircularToroid = z
 export const Toroid = z.discriminatedUnion('section', [RectangularToroid, CircularToroid]).meta({ id: 'Toroid' });
 
 export const Cored = z
-  .strictObject({ shape: z.literal('cored'), turns, core: Core })
+  .strictObject({ shape: z.literal('cored'), turns, core: CoreSchema })
   .meta({ id: 'Cored', description: 'winding on a magnetic core, with or without gap' });
 
 export const CoilSchema = z

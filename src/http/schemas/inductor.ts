@@ -3,6 +3,7 @@ import type { Sweep } from '../../physics/characteristics/measured.ts';
 import type { Inductor } from '../../physics/inductor.ts';
 import type { Winding } from '../../physics/losses/winding-resistance.ts';
 import { CoilSchema } from './coils.ts';
+import { list } from './list.ts';
 import { area_m2, inductance_H, length_m, turns } from './quantities.ts';
 
 /** Readings in one sweep: more than any rig needs, few enough to answer at once. */
@@ -11,12 +12,12 @@ const MAXIMUM_READINGS = 10_000;
 export const SweepSchema = z
   .strictObject({
     kind: z.enum(['differential', 'apparent']),
-    current_A: z
-      .array(z.number().min(0).max(1e9))
-      .min(2)
-      .max(MAXIMUM_READINGS)
-      .meta({ description: 'A, strictly increasing' }),
-    inductance_H: z.array(inductance_H).min(2).max(MAXIMUM_READINGS).meta({ description: 'H, one for each current' }),
+    current_A: list(z.number().min(0).max(1e9), { min: 2, max: MAXIMUM_READINGS }).meta({
+      description: 'A, strictly increasing',
+    }),
+    inductance_H: list(inductance_H, { min: 2, max: MAXIMUM_READINGS }).meta({
+      description: 'H, one for each current',
+    }),
   })
   .meta({ id: 'Sweep', description: 'inductance over bias current, as a rig reads it' }) satisfies z.ZodType<Sweep>;
 
@@ -26,7 +27,10 @@ export const InductorSchema = z
     z.strictObject({ coil: CoilSchema }),
     z.strictObject({ sweep: SweepSchema }),
   ])
-  .meta({ id: 'Inductor', description: 'by its value, its construction, or its measured sweep' }) satisfies z.ZodType<Inductor>;
+  .meta({
+    id: 'Inductor',
+    description: 'by its value, its construction, or its measured sweep',
+  }) satisfies z.ZodType<Inductor>;
 
 export const WindingSchema = z
   .strictObject({

@@ -1,6 +1,12 @@
 import { z } from 'zod';
 import type { Path } from '../../physics/transients/path.ts';
-import { capacitance_F, positiveVoltage_V, resistance_ohm, resistanceOrZero_ohm, voltageOrZero_V } from './quantities.ts';
+import {
+  capacitance_F,
+  positiveVoltage_V,
+  resistance_ohm,
+  resistanceOrZero_ohm,
+  voltageOrZero_V,
+} from './quantities.ts';
 
 export const PathSchema = z
   .discriminatedUnion('kind', [

@@ -5,10 +5,18 @@ import { z } from 'zod';
  * several quantities stay within 64-bit floats; what still leaves them is refused as `number-range`.
  */
 const quantity = (lowest: number, highest: number, description: string) =>
-  z.number().min(lowest).max(highest).meta({ description: `${description}; ${lowest} to ${highest}` });
+  z
+    .number()
+    .min(lowest)
+    .max(highest)
+    .meta({ description: `${description}; ${lowest} to ${highest}` });
 
 const signed = (limit: number, description: string) =>
-  z.number().min(-limit).max(limit).meta({ description: `${description}; magnitude up to ${limit}` });
+  z
+    .number()
+    .min(-limit)
+    .max(limit)
+    .meta({ description: `${description}; magnitude up to ${limit}` });
 
 export const length_m = quantity(1e-9, 1e6, 'm');
 export const lengthOrZero_m = z.number().min(0).max(1e6).meta({ description: 'm; 0 to 1e6' });
@@ -32,6 +40,14 @@ export const field_A_per_m = quantity(1e-9, 1e12, 'A/m');
 export const temperature_degC = z.number().min(-273.15).max(2000).meta({ description: '°C; -273.15 to 2000' });
 export const rise_K = quantity(1e-6, 2000, 'K');
 export const relativePermeability = z.number().min(1).max(1e9).meta({ description: 'relative to vacuum; 1 to 1e9' });
-export const standardUncertainty = z.number().min(0).max(1e15).meta({ description: 'standard uncertainty (k = 1), unit of the quantity' });
+export const standardUncertainty = z
+  .number()
+  .min(0)
+  .max(1e15)
+  .meta({ description: 'standard uncertainty (k = 1), unit of the quantity' });
 export const fraction = z.number().gt(0).lt(1).meta({ description: 'a fraction between 0 and 1, both excluded' });
-export const risk = z.number().gt(0).max(0.5).meta({ description: 'accepted probability of a wrong decision; up to 0.5; default 0.05' });
+export const risk = z
+  .number()
+  .gt(0)
+  .max(0.5)
+  .meta({ description: 'accepted probability of a wrong decision; up to 0.5; default 0.05' });

@@ -1,12 +1,14 @@
 import { type Kysely, sql } from 'kysely';
 import type { Migration } from 'kysely/migration';
+import type { Engine } from '../database.ts';
+import { counted } from './columns.ts';
 
 /** Recorded approvals, chained by their digests. */
-export const approvals: Migration = {
+export const approvals = (engine: Engine): Migration => ({
   async up(db: Kysely<unknown>) {
     await db.schema
       .createTable('approvals')
-      .addColumn('position', 'integer', (column) => column.primaryKey().autoIncrement())
+      .addColumn('position', 'integer', counted(engine))
       .addColumn('id', 'text', (column) => column.notNull().unique())
       .addColumn('part_number', 'text', (column) => column.notNull())
       .addColumn('part_revision', 'text', (column) => column.notNull())
@@ -23,4 +25,4 @@ export const approvals: Migration = {
     // Only one record can be the first: a fork at the root would otherwise pass the unique previous digest.
     await sql`create unique index approvals_root on approvals ((1)) where previous_digest is null`.execute(db);
   },
-};
+});

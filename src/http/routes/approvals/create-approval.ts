@@ -9,12 +9,9 @@ import { ApprovalRequestSchema } from '../../schemas/approval-request.ts';
 import { EXAMPLES } from './examples.ts';
 
 const Headers = z.object({
-  'idempotency-key': z
-    .string()
-    .min(1)
-    .max(200)
-    .exactOptional()
-    .meta({ description: 'names this request: a repeat with the same key and body answers with what the first recorded' }),
+  'idempotency-key': z.string().min(1).max(200).exactOptional().meta({
+    description: 'names this request: a repeat with the same key and body answers with what the first recorded',
+  }),
 });
 
 /** POST /v1/approvals */

@@ -5,14 +5,22 @@ import type { ApprovalDesk } from '../../../approval/approval.ts';
 import { packCursor, unpackCursor } from '../../cursor.ts';
 import { operation } from '../../operation.ts';
 import { ApprovalSchema, VerdictSchema } from '../../schemas/approval.ts';
+import { list } from '../../schemas/list.ts';
 
-const Summary = ApprovalSchema.pick({ id: true, verdict: true, reasons: true, engine: true, digests: true, recordedAt: true })
+const Summary = ApprovalSchema.pick({
+  id: true,
+  verdict: true,
+  reasons: true,
+  engine: true,
+  digests: true,
+  recordedAt: true,
+})
   .extend({ part: z.object({ number: z.string(), revision: z.string() }) })
   .meta({ id: 'ApprovalSummary' });
 
 const Page = z
   .object({
-    approvals: z.array(Summary).meta({ description: 'oldest first' }),
+    approvals: list(Summary).meta({ description: 'oldest first' }),
     after: z.string().nullable().meta({ description: 'send as after for the next page; null on the last' }),
   })
   .meta({ id: 'ApprovalPage' });

@@ -1,37 +1,32 @@
 import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
-import { z } from 'zod';
+import type { z } from 'zod';
 import { cautionsOf, type Hazards } from '../../../approval/cautions.ts';
 import { propagateOverRecord } from '../../../metrology/propagation.ts';
 import type { Calculation } from '../../../physics/calculations/calculation.ts';
 import { BODY_PROBLEMS, operation } from '../../operation.ts';
+import { list } from '../../schemas/list.ts';
 import { CautionSchema } from '../../schemas/method.ts';
-import { UncertaintyMap, UncertaintySchema } from '../../schemas/uncertainty.ts';
+import { type UncertaintyFields, UncertaintySchema } from '../../schemas/uncertainty.ts';
 
-interface Description<Request extends z.ZodObject, Answer extends z.ZodObject> {
+interface Description<Request extends UncertaintyFields, Answer extends object> {
   readonly path: string;
   readonly operationId: string;
   readonly summary: string;
-  readonly description?: string;
-  readonly request: Request;
-  readonly answer: Answer;
-  readonly examples: readonly z.input<Request>[];
-  readonly calculation: Calculation<z.output<Request>, z.input<Answer>>;
-  readonly hazards?: (request: z.output<Request>, answer: z.input<Answer>) => Hazards;
+  /** Strict, and spread with `uncertaintyFields`. */
+  readonly request: z.ZodType<Request>;
+  readonly answer: z.ZodObject & z.ZodType<unknown, Answer>;
+  readonly examples: readonly NoInfer<Request>[];
+  readonly calculation: Calculation<NoInfer<Request>, NoInfer<Answer>>;
+  readonly hazards?: (request: NoInfer<Request>, answer: NoInfer<Answer>) => Hazards;
 }
 
 /** Registers one calculation: nothing stored, uncertainty of any number in the request propagated, cautions added. */
-export function calculation<Request extends z.ZodObject, Answer extends z.ZodObject>(
+export function calculation<Request extends UncertaintyFields, Answer extends object>(
   app: FastifyInstance,
   c: Description<Request, Answer>,
 ): void {
-  const Body = c.request
-    .extend({ uncertainty: UncertaintyMap.exactOptional() })
-    .meta({ examples: c.examples as unknown[] });
-  const Response = c.answer.extend({
-    uncertainty: UncertaintySchema.exactOptional(),
-    cautions: z.array(CautionSchema),
-  });
+  const Response = c.answer.extend({ uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) });
   app.withTypeProvider<ZodTypeProvider>().post(
     c.path,
     {
@@ -39,23 +34,21 @@ export function calculation<Request extends z.ZodObject, Answer extends z.ZodObj
         ...operation({
           operationId: c.operationId,
           summary: c.summary,
-          ...(c.description !== undefined && { description: c.description }),
           tag: 'calculation',
           scope: 'calculate',
           success: { 200: Response },
           problems: BODY_PROBLEMS,
         }),
-        body: Body,
+        body: c.request.meta({ examples: c.examples as unknown[] }),
       },
     },
     async (request, reply) => {
-      const { uncertainty, ...body } = request.body as z.output<Request> & { uncertainty?: Record<string, number> };
-      const input = body as unknown as z.output<Request>;
-      const answer = c.calculation.calculate(input);
+      const { uncertainty, ...input } = request.body as Request;
+      const answer = c.calculation.calculate(input as Request);
       return reply.send({
         ...answer,
-        ...(uncertainty && { uncertainty: firstOrder(c.calculation, input, uncertainty) }),
-        cautions: cautionsOf(c.hazards?.(input, answer) ?? {}),
+        ...(uncertainty && { uncertainty: firstOrder(c.calculation, input as Request, uncertainty) }),
+        cautions: cautionsOf(c.hazards?.(input as Request, answer) ?? {}),
       } as never);
     },
   );
@@ -64,10 +57,16 @@ export function calculation<Request extends z.ZodObject, Answer extends z.ZodObj
 function firstOrder<Request, Answer>(
   { calculate, mainOutputs }: Calculation<Request, Answer>,
   request: Request,
-  uncertainty: Record<string, number>,
+  uncertainty: Readonly<Record<string, number>>,
 ) {
+  const outputs = propagateOverRecord(request as object, uncertainty, (record) => mainOutputs(calculate(record as Request)));
   return {
     method: 'first-order' as const,
-    outputs: propagateOverRecord(request as object, uncertainty, (record) => mainOutputs(calculate(record as Request))),
+    outputs: Object.fromEntries(
+      Object.entries(outputs).map(([output, { standardUncertainty, contributions }]) => [
+        output,
+        { standardUncertainty, contributions: contributions.map(({ name, ...contribution }) => ({ pointer: name, ...contribution })) },
+      ]),
+    ),
   };
 }

@@ -41,6 +41,16 @@ export const LIMITS: readonly RequestedLimit[] = [
     checks: ['flux-density'],
   },
   {
+    pointer: '/duty/hotspotLimit_degC',
+    given: ({ duty }) => duty.hotspotLimit_degC !== undefined,
+    checks: ['temperature-rise'],
+  },
+  {
+    pointer: '/part/drawing/thermal',
+    given: ({ part }) => part.drawing?.thermal !== undefined,
+    checks: ['temperature-rise'],
+  },
+  {
     pointer: '/duty/interruption/voltageLimit_V',
     given: ({ duty }) => duty.interruption?.voltageLimit_V !== undefined,
     checks: ['turn-off-voltage'],

@@ -1,4 +1,5 @@
 import type { Coil } from '../physics/coil.ts';
+import type { Cooling } from '../physics/losses/temperature-rise.ts';
 import type { Winding } from '../physics/losses/winding-resistance.ts';
 
 /** What the drawing promises. */
@@ -24,6 +25,8 @@ export interface Drawing {
 export interface Construction {
   readonly coil: Coil;
   readonly winding?: Winding;
+  /** how the part sheds its heat; absent: as the drawing's thermal promise implies */
+  readonly cooling?: Cooling;
 }
 
 /** A part at a revision: what its drawing promises and how it is made. */

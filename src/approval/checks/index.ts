@@ -7,6 +7,7 @@ import { measuredEnergy, measuredInductance, measuredResistance, measuredSaturat
 import { saturationCurrent } from './saturation-current.ts';
 import { storedEnergy } from './stored-energy.ts';
 import { strayField } from './stray-field.ts';
+import { temperatureRise } from './temperature-rise.ts';
 import { pathEnergy, turnOffTime, turnOffVoltage } from './turn-off.ts';
 import { windingResistance } from './winding-resistance.ts';
 
@@ -19,6 +20,7 @@ export const CHECKS: readonly Check[] = [
   storedEnergy,
   coreEnergyCapacity,
   windingResistance,
+  temperatureRise,
   turnOffVoltage,
   turnOffTime,
   pathEnergy,

@@ -5,7 +5,7 @@ import type { ApprovalRequest } from '../../approval/request.ts';
 import type { Instrument } from '../../evidence/instrument.ts';
 import type { Unit } from '../../evidence/unit.ts';
 import { CoilSchema } from './coils.ts';
-import { SweepSchema, WindingSchema } from './inductor.ts';
+import { CoolingSchema, SweepSchema, WindingSchema } from './inductor.ts';
 import { list } from './list.ts';
 import { PathSchema } from './path.ts';
 import * as q from './quantities.ts';
@@ -46,7 +46,7 @@ export const PartSchema = z
     description: text(500).exactOptional(),
     drawing: DrawingSchema.exactOptional(),
     construction: z
-      .strictObject({ coil: CoilSchema, winding: WindingSchema.exactOptional() })
+      .strictObject({ coil: CoilSchema, winding: WindingSchema.exactOptional(), cooling: CoolingSchema.exactOptional() })
       .exactOptional()
       .meta({ description: 'how the part is made' }),
   })

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { Sweep } from '../../physics/characteristics/measured.ts';
 import type { Inductor } from '../../physics/inductor.ts';
+import type { Cooling } from '../../physics/losses/temperature-rise.ts';
 import type { Winding } from '../../physics/losses/winding-resistance.ts';
 import { CoilSchema } from './coils.ts';
 import { list } from './list.ts';
@@ -46,3 +47,10 @@ export const WindingSchema = z
     windowArea_m2: area_m2.exactOptional(),
   })
   .meta({ id: 'Winding', description: 'round wire or foil' }) satisfies z.ZodType<Winding>;
+
+export const CoolingSchema = z
+  .strictObject({
+    thermalResistance_K_per_W: z.number().min(1e-6).max(1e6).exactOptional(),
+    surfaceArea_m2: area_m2.exactOptional(),
+  })
+  .meta({ id: 'Cooling', description: 'by a thermal resistance, or by the surface in still air' }) satisfies z.ZodType<Cooling>;

@@ -10,7 +10,7 @@ export interface Harmonic {
 
 export interface WindingCurrent {
   readonly direct_A: number;
-  readonly harmonics?: readonly Harmonic[] | undefined;
+  readonly harmonics?: readonly Harmonic[];
 }
 
 export interface HarmonicLoss {

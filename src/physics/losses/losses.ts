@@ -8,11 +8,11 @@ import { type Winding, windowFill } from './winding-resistance.ts';
 export interface LossesRequest {
   readonly winding: Winding;
   readonly current: WindingCurrent;
-  readonly core?: LossyCore | undefined;
-  readonly flux?: Flux | undefined;
+  readonly core?: LossyCore;
+  readonly flux?: Flux;
   /** Of the winding; with `cooling`, of what surrounds the part. */
   readonly temperature_degC: number;
-  readonly cooling?: Cooling | undefined;
+  readonly cooling?: Cooling;
 }
 
 export interface Losses {
@@ -89,7 +89,7 @@ function steadyState(
   core: { power_W: number; method: Method } | undefined,
 ): { copper: CopperLoss; rise: { rise_K: number; method: Method }; reached_degC: number } {
   const state = atTemperature(() =>
-    temperatureRise({ winding, current, core, ambient_degC: temperature_degC, cooling }),
+    temperatureRise({ winding, current, ...(core && { core }), ambient_degC: temperature_degC, cooling }),
   );
   if (!state.steady) throw new InvalidQuantity('/cooling', state.reason);
   return { copper: state.copper, rise: state, reached_degC: state.temperature_degC };

@@ -6,15 +6,15 @@ import { conductorTemperatureRange, type Winding } from './winding-resistance.ts
 
 /** How the part gives off its heat: exactly one of the two. */
 export interface Cooling {
-  readonly thermalResistance_K_per_W?: number | undefined;
-  readonly surfaceArea_m2?: number | undefined;
+  readonly thermalResistance_K_per_W?: number;
+  readonly surfaceArea_m2?: number;
 }
 
 export interface HeatedPart {
   readonly winding: Winding;
   readonly current: WindingCurrent;
   /** Core loss and its method; taken as constant over temperature. */
-  readonly core?: { readonly power_W: number; readonly method: Method } | undefined;
+  readonly core?: { readonly power_W: number; readonly method: Method };
   readonly ambient_degC: number;
   readonly cooling: Cooling;
 }

@@ -4,6 +4,7 @@ import { energyRoute } from './energy.ts';
 import { energyDensityRoute } from './energy-density.ts';
 import { fieldRoute } from './field.ts';
 import { inductanceRoute } from './inductance.ts';
+import { lossesRoute } from './losses.ts';
 import { mutualInductanceRoute } from './mutual-inductance.ts';
 import { saturationRoute } from './saturation.ts';
 import { transientRoute } from './transient.ts';
@@ -17,5 +18,6 @@ export function calculations(app: FastifyInstance): void {
   saturationRoute(app);
   fieldRoute(app);
   transientRoute(app);
+  lossesRoute(app);
   conformityRoute(app);
 }

@@ -74,7 +74,7 @@ export function igseLossDensity_W_per_m3(loss: SteinmetzParameters, flux: Piecew
  *
  * | α         | worst relative error | against           |
  * |-----------|----------------------|-------------------|
- * | 0.01 … 100 | 2e-15               | mpmath, 50 digits |
+ * | 0.01 … 100 | 1.2e-15              | mpmath, 50 digits |
  */
 export function cosinePowerIntegral(alpha: number): number {
   let y = (alpha + 1) / 2;

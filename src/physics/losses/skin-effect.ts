@@ -17,8 +17,8 @@ export function skinDepth_m(resistivity_ohm_m: number, frequency_Hz: number): nu
  *
  * | x            | worst relative error | against                 |
  * |--------------|----------------------|-------------------------|
- * | 0 … 40       | 4e-16                | mpmath, 50 digits       |
- * | 40 … 1e9     | 4e-16                | mpmath, 50 digits       |
+ * | 0 … 40       | 3e-16                | mpmath, 50 digits       |
+ * | 40 … 1e9     | 3e-16                | mpmath, 50 digits       |
  */
 export function roundWireResistanceRatio(x: number): number {
   return x < SERIES_FROM ? byContinuedFraction(x) : byAsymptoticSeries(x);

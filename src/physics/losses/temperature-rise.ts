@@ -43,9 +43,10 @@ export type ThermalState =
  * `steady: false`, with the reason, where the crossing is not below the melting point. Throws `InvalidQuantity` at `/cooling`
  * (neither or both), `/ambient_degC` (outside the conductor's range) and as `copperLoss` at `/winding/…` and `/current/…`.
  *
- * | case                                                   | worst relative error | against                    |
- * |--------------------------------------------------------|----------------------|----------------------------|
- * | direct current, rise 1e-9 … 1000 K                      | 1e-13                | ΔT = A/(1 − αA), closed form |
+ * | case                                            | worst relative error of the rise | against                      |
+ * |-------------------------------------------------|----------------------------------|------------------------------|
+ * | direct current, ambient −200 … 400 °C, rise      | 2e-15                            | ΔT = A/(1 − αA), closed form |
+ * | 1e-13 … 890 K, copper and aluminium              |                                  |                              |
  */
 export function temperatureRise(part: HeatedPart): ThermalState {
   const law = coolingLaw(part.cooling);

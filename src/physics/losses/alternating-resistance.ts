@@ -86,7 +86,7 @@ function roundWire(winding: Winding, diameter: number, skinDepth: number): { res
         'field along the layers, nothing on one side of the portion, no field of an air gap; wires in straight rows; ' +
         (litz
           ? 'strands insulated and transposed so that each takes every place (litz); parallel wires that are not transposed lose more, without bound here'
-          : 'best to 1.3 wire diameters of pitch'),
+          : 'best to 1.3 wire diameters of pitch; error checked for wires up to 100 skin depths thick'),
     },
   };
 }
@@ -96,7 +96,7 @@ function roundWire(winding: Winding, diameter: number, skinDepth: number): { res
  *
  * The bound encloses the exact field of such rows, solved by multipoles (test/fixtures/multipole), for d/δ from 0.1 to 100,
  * pitch 1.02 to 10 d, 1 to 10 layers (32 in a few cases), 1.02 d or one pitch apart, square and staggered: Dowell is 5 % high
- * for d < δ (the equal square's proximity loss is π/3 of the circle's), high by up to d·(1/d − 1/pitch) of itself where
+ * for d < δ (the equal square's proximity loss is π/3 of the circle's), high by up to 1 − d/pitch of itself where
  * sparse wires are thick, and low where many layers of thick wire almost touch. `added` caps that by what is added to 1:
  * at low frequency all of it vanishes; layers much closer than turns (pitch 10 d) are what needs a cap above it.
  */

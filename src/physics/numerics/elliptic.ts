@@ -55,9 +55,18 @@ export function ellipticKMinusE(
   complementaryModulus: number,
   modulusSquared = modulusSquaredOf(complementaryModulus),
 ): number {
-  if (complementaryModulus === 0) return Infinity;
+  return ellipticKAndKMinusE(complementaryModulus, modulusSquared).kMinusE;
+}
+
+/** K and K − E together, as above, for the price of one. */
+export function ellipticKAndKMinusE(
+  complementaryModulus: number,
+  modulusSquared = modulusSquaredOf(complementaryModulus),
+): { k: number; kMinusE: number } {
+  if (complementaryModulus === 0) return { k: Infinity, kMinusE: Infinity };
   const { mean, weightedSquares } = descend(complementaryModulus, modulusSquared);
-  return (Math.PI / (2 * mean)) * (modulusSquared / 2 + weightedSquares);
+  const k = Math.PI / (2 * mean);
+  return { k, kMinusE: k * (modulusSquared / 2 + weightedSquares) };
 }
 
 /**

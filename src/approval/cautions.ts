@@ -1,6 +1,12 @@
 import { inWords } from './wording.ts';
 
-export const CAUTION_CODES = ['stored-energy', 'hazardous-energy', 'turn-off-voltage', 'static-field', 'hot-surface'] as const;
+export const CAUTION_CODES = [
+  'stored-energy',
+  'hazardous-energy',
+  'turn-off-voltage',
+  'static-field',
+  'hot-surface',
+] as const;
 
 /** Something that can hurt, in words; stable `code`. */
 export interface Caution {

@@ -2,6 +2,7 @@ import { differentialInductanceError, type FluxCharacteristic, methodAt } from '
 import { coilCharacteristic } from '../physics/coil.ts';
 import { REFERENCE_TEMPERATURE_DEGC, saturationTemperatureRange } from '../physics/core/material.ts';
 import { within } from '../physics/invalid-quantity.ts';
+import { type Winding, windingResistance } from '../physics/losses/winding-resistance.ts';
 import type { Method } from '../physics/method.ts';
 import type { Construction } from './part.ts';
 
@@ -56,6 +57,13 @@ const modelUncertainty = (value: number, method: Method): number =>
 /** "at 95 °C", or nothing where no temperature is stated. */
 export const atTemperature = (temperature_degC: number | undefined): string =>
   temperature_degC === undefined ? '' : ` and ${temperature_degC} °C`;
+
+/** Resistance of a winding at a temperature that lies at `temperaturePointer` in the request. */
+export function windingResistanceAt(winding: Winding, temperature_degC: number, temperaturePointer: string) {
+  return within(WINDING_POINTER, () => windingResistance(winding, temperature_degC), {
+    '/temperature_degC': temperaturePointer,
+  });
+}
 
 /**
  * A temperature at which the construction can be calculated where the drawing names none: the reference temperature of

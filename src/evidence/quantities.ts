@@ -87,7 +87,12 @@ function fromSweep(
     return { unavailable: `the sweep ends at ${characteristic.maximumCurrent_A} A, before ${current_A} A` };
   }
   const { inductance, current } = unit.instrument;
-  const readAs = ([inductanceGain = 1, inductanceOffset_H = 0, currentGain = 1, currentOffset_A = 0]: readonly number[]) =>
+  const readAs = ([
+    inductanceGain = 1,
+    inductanceOffset_H = 0,
+    currentGain = 1,
+    currentOffset_A = 0,
+  ]: readonly number[]) =>
     quantity(
       measuredCharacteristic(
         corrected(unit.sweep, { inductanceGain, inductanceOffset_H, currentGain, currentOffset_A }),

@@ -14,12 +14,15 @@ export class InvalidQuantity extends Error {
   }
 }
 
-/** Runs `calculate`; an `InvalidQuantity` it throws comes out with `prefix` (such as `/coil`) before its pointer. */
-export function within<T>(prefix: string, calculate: () => T): T {
+/**
+ * Runs `calculate`; an `InvalidQuantity` it throws comes out with `prefix` (such as `/coil`) before its pointer. A quantity that does
+ * not lie below the prefix in the outer record, as a temperature beside a winding, is named in `elsewhere` with where it does.
+ */
+export function within<T>(prefix: string, calculate: () => T, elsewhere: Readonly<Record<string, string>> = {}): T {
   try {
     return calculate();
   } catch (error) {
-    if (error instanceof InvalidQuantity) throw new InvalidQuantity(prefix + error.pointer, error.detail);
-    throw error;
+    if (!(error instanceof InvalidQuantity)) throw error;
+    throw new InvalidQuantity(elsewhere[error.pointer] ?? prefix + error.pointer, error.detail);
   }
 }

@@ -65,17 +65,28 @@ const limitH = (((Math.sqrt(1 + 4 * CHI) - 1) / 2) * JS) / (CHI * MU_0);
 // A thin solenoid sheet's field far away is a dipole's; on the axis exactly that of two end discs' solid angles.
 const SOLENOID = { shape: 'solenoid', turns: 200, diameter_m: 0.02, length_m: 0.05 } as const;
 const DISTANCE = 0.4;
-const axialField = ((MU_0 * SOLENOID.turns * PEAK) / (2 * SOLENOID.length_m)) *
+const axialField =
+  ((MU_0 * SOLENOID.turns * PEAK) / (2 * SOLENOID.length_m)) *
   ((DISTANCE + 0.025) / Math.hypot(DISTANCE + 0.025, 0.01) - (DISTANCE - 0.025) / Math.hypot(DISTANCE - 0.025, 0.01));
 
 // A linear coil interrupted into a clamp, winding without resistance: a straight line down.
-const toroid = { shape: 'toroid', section: 'rectangle', turns: 400, innerDiameter_m: 0.05, outerDiameter_m: 0.09, height_m: 0.03 } as const;
+const toroid = {
+  shape: 'toroid',
+  section: 'rectangle',
+  turns: 400,
+  innerDiameter_m: 0.05,
+  outerDiameter_m: 0.09,
+  height_m: 0.03,
+} as const;
 const toroidL = (MU_0 * 400 ** 2 * 0.03 * Math.log(9 / 5)) / (2 * Math.PI);
 const CLAMP = 80;
 const interruption = { path: { kind: 'clamp', clamp_V: CLAMP } } as const;
 
 const winding = { turns: 400, meanTurnLength_m: 0.1, wireDiameter_m: 0.0005 };
 const resistance20 = (400 * 0.1) / (58e6 * (Math.PI / 4) * 0.0005 ** 2);
+
+const AMBIENT = 40;
+const HEATING = 10 * 1 ** 2 * resistance20;
 
 // A unit whose differential inductance falls along a straight line, L0 (1 − i/20 A).
 const L0 = 1e-3;
@@ -90,7 +101,11 @@ const unit = {
   },
   temperature_degC: 25,
   resistance_ohm: 0.5,
-  sweep: { kind: 'differential', current_A: SWEEP_CURRENTS, inductance_H: SWEEP_CURRENTS.map((i) => L0 * (1 - i / 20)) },
+  sweep: {
+    kind: 'differential',
+    current_A: SWEEP_CURRENTS,
+    inductance_H: SWEEP_CURRENTS.map((i) => L0 * (1 - i / 20)),
+  },
 } as const;
 
 const CASES: readonly Case[] = [
@@ -100,7 +115,11 @@ const CASES: readonly Case[] = [
     tolerance: 1e-9,
     side: 'lower',
     request: (limit) => ({
-      part: { ...part, construction: { coil: toroid }, drawing: { inductance: { nominal_H: limit, lower_H: limit, upper_H: 1e3 } } },
+      part: {
+        ...part,
+        construction: { coil: toroid },
+        drawing: { inductance: { nominal_H: limit, lower_H: limit, upper_H: 1e3 } },
+      },
       duty,
     }),
   },
@@ -175,6 +194,17 @@ const CASES: readonly Case[] = [
         drawing: { inductance: wide, resistance: { upper_ohm: limit, temperature_degC: 20 } },
       },
       duty,
+    }),
+  },
+  {
+    check: 'temperature-rise',
+    // ΔT = R_th I² R₂₀ (1 + α (T_a + ΔT − 20)), solved for ΔT.
+    value: AMBIENT + (HEATING * (1 + 0.00393 * (AMBIENT - 20))) / (1 - 0.00393 * HEATING),
+    tolerance: 1e-8,
+    side: 'upper',
+    request: (limit) => ({
+      part: { ...part, construction: { coil: toroid, winding, cooling: { thermalResistance_K_per_W: 10 } } },
+      duty: { ...duty, rmsCurrent_A: 1, ambient_degC: AMBIENT, hotspotLimit_degC: limit },
     }),
   },
   {
@@ -277,16 +307,19 @@ const TOLERANCE: Readonly<Record<string, number>> = {
 function withTolerances(request: ApprovalRequest): ApprovalRequest {
   const present = Object.entries(TOLERANCE).filter(
     ([pointer]) =>
-      typeof pointer.split('/').slice(1).reduce<unknown>((node, key) => (node as Record<string, unknown> | undefined)?.[key], request) ===
-      'number',
+      typeof pointer
+        .split('/')
+        .slice(1)
+        .reduce<unknown>((node, key) => (node as Record<string, unknown> | undefined)?.[key], request) === 'number',
   );
   return { ...request, uncertainty: Object.fromEntries(present) };
 }
 
-const resultOf = (request: ApprovalRequest, check: CheckName) => evaluate(request).checks.find((result) => result.check === check)!;
+const resultOf = (request: ApprovalRequest, check: CheckName) =>
+  evaluate(request).checks.find((result) => result.check === check)!;
 
 describe.each(CASES)('$check', ({ check, value, tolerance, side, request }) => {
-  const [inside, outside] = side === 'lower' ? [0.5, 2] : [2, 0.5];
+  const [inside, outside] = side === 'lower' ? [0.1, 2] : [2, 0.5];
 
   it('observes the quantity and passes well inside its limit', () => {
     const result = resultOf(request(value * inside), check);

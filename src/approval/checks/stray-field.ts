@@ -28,7 +28,13 @@ export const strayField: Check = {
         relativeError: 1,
         validity: 'round loops, solenoids and multilayer coils in free space',
       };
-      return [{ ...common, method, undecided: `the stray field of a ${construction.coil.shape} winding is not calculated here` }];
+      return [
+        {
+          ...common,
+          method,
+          undecided: `the stray field of a ${construction.coil.shape} winding is not calculated here`,
+        },
+      ];
     }
     const { magnitude_T } = within('/duty/strayField', () =>
       worstFieldAtDistance(coil, peakCurrent_A, place.distance_m),

@@ -3,10 +3,10 @@ import { within } from '../../physics/invalid-quantity.ts';
 import type { WindingCurrent } from '../../physics/losses/copper-loss.ts';
 import { coreLoss } from '../../physics/losses/core-loss.ts';
 import { type Cooling, temperatureRise as steadyRise } from '../../physics/losses/temperature-rise.ts';
-import { type Winding, windingResistance } from '../../physics/losses/winding-resistance.ts';
+import type { Winding } from '../../physics/losses/winding-resistance.ts';
 import type { Method } from '../../physics/method.ts';
 import type { Check, Observation } from '../check.ts';
-import { COIL_POINTER, constructionCharacteristic, WINDING_LEVERS, WINDING_POINTER } from '../construction.ts';
+import { COIL_POINTER, constructionCharacteristic, WINDING_LEVERS, windingResistanceAt } from '../construction.ts';
 import type { Construction } from '../part.ts';
 import type { ApprovalRequest } from '../request.ts';
 import { inWords } from '../wording.ts';
@@ -54,7 +54,9 @@ function hotSpot(request: ApprovalRequest): Observation[] {
   const common = { what: `Hot spot at an ambient of ${inWords(ambient_degC, '°C')}`, unit: '°C', limit: { upper } };
   const cooling = part.construction.cooling ?? impliedCooling(request, winding);
   if (duty.rmsCurrent_A === undefined || !cooling) {
-    const missing = cooling ? 'the duty names no rms current' : 'neither the construction nor the drawing says how the part cools';
+    const missing = cooling
+      ? 'the duty names no rms current'
+      : 'neither the construction nor the drawing says how the part cools';
     return [{ ...common, method: UNKNOWN, undecided: missing }];
   }
   const core = rippleCoreLoss(part.construction, request);
@@ -78,8 +80,10 @@ function heated(
   ambient_degC: number,
   core?: { readonly power_W: number; readonly method: Method },
 ) {
-  return within('/part/construction', () =>
-    steadyRise({ winding, current, cooling, ambient_degC, ...(core !== undefined && { core }) }),
+  return within(
+    '/part/construction',
+    () => steadyRise({ winding, current, cooling, ambient_degC, ...(core !== undefined && { core }) }),
+    { '/ambient_degC': '/duty/ambient_degC' },
   );
 }
 
@@ -87,7 +91,7 @@ function heated(
 function impliedCooling({ part: { drawing } }: ApprovalRequest, winding: Winding): Cooling | undefined {
   if (!drawing?.thermal) return undefined;
   const { current_A, rise_K } = drawing.thermal;
-  const hot = within(WINDING_POINTER, () => windingResistance(winding, LABORATORY_DEGC + rise_K));
+  const hot = windingResistanceAt(winding, LABORATORY_DEGC + rise_K, '/part/drawing/thermal/rise_K');
   return { thermalResistance_K_per_W: rise_K / (current_A ** 2 * hot.resistance_ohm) };
 }
 
@@ -113,6 +117,9 @@ function rippleCoreLoss(construction: Construction, { duty }: ApprovalRequest) {
   return within(COIL_POINTER, () => {
     const { effectiveArea_m2, effectiveVolume_m3 } = within('/core', () => coreParameters(coil.core));
     const swing_T = swing_Wb / (coil.turns * effectiveArea_m2);
-    return coreLoss({ volume_m3: effectiveVolume_m3, loss }, { frequency_Hz, phase: [0, 0.5, 1], fluxDensity_T: [0, swing_T, 0] });
+    return coreLoss(
+      { volume_m3: effectiveVolume_m3, loss },
+      { frequency_Hz, phase: [0, 0.5, 1], fluxDensity_T: [0, swing_T, 0] },
+    );
   });
 }

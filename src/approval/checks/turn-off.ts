@@ -1,8 +1,7 @@
 import { within } from '../../physics/invalid-quantity.ts';
-import { windingResistance } from '../../physics/losses/winding-resistance.ts';
 import { type Transient, transient } from '../../physics/transients/transient.ts';
 import type { Check, CheckLimit, CheckName, Observation } from '../check.ts';
-import { constructionCharacteristic, observed, WINDING_POINTER } from '../construction.ts';
+import { constructionCharacteristic, observed, windingResistanceAt } from '../construction.ts';
 import type { ApprovalRequest } from '../request.ts';
 import { inWords } from '../wording.ts';
 
@@ -19,7 +18,7 @@ export function interruptionOf({ part: { construction }, duty }: ApprovalRequest
   const { winding } = construction;
   const { path, source_V, safeCurrent_A } = interruption;
   const windingResistance_ohm = winding
-    ? within(WINDING_POINTER, () => windingResistance(winding, duty.ambient_degC ?? COLD_DEGC).resistance_ohm)
+    ? windingResistanceAt(winding, duty.ambient_degC ?? COLD_DEGC, '/duty/ambient_degC').resistance_ohm
     : 0;
   const characteristic = constructionCharacteristic(construction, duty.coreTemperature_degC);
   return within('/duty/interruption', () =>

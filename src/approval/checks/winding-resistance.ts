@@ -1,7 +1,5 @@
-import { within } from '../../physics/invalid-quantity.ts';
-import { windingResistance as resistanceOf } from '../../physics/losses/winding-resistance.ts';
 import type { Check } from '../check.ts';
-import { observed, WINDING_LEVERS, WINDING_POINTER } from '../construction.ts';
+import { observed, WINDING_LEVERS, windingResistanceAt } from '../construction.ts';
 import { inWords } from '../wording.ts';
 
 /** Does the winding as constructed stay below the drawing's resistance at the drawing's temperature? */
@@ -12,7 +10,11 @@ export const windingResistance: Check = {
     const winding = construction?.winding;
     if (!drawing?.resistance || !winding) return [];
     const { upper_ohm, temperature_degC } = drawing.resistance;
-    const { resistance_ohm, method } = within(WINDING_POINTER, () => resistanceOf(winding, temperature_degC));
+    const { resistance_ohm, method } = windingResistanceAt(
+      winding,
+      temperature_degC,
+      '/part/drawing/resistance/temperature_degC',
+    );
     return [
       {
         what: `Winding resistance at ${inWords(temperature_degC, '°C')}`,

@@ -46,7 +46,11 @@ export const PartSchema = z
     description: text(500).exactOptional(),
     drawing: DrawingSchema.exactOptional(),
     construction: z
-      .strictObject({ coil: CoilSchema, winding: WindingSchema.exactOptional(), cooling: CoolingSchema.exactOptional() })
+      .strictObject({
+        coil: CoilSchema,
+        winding: WindingSchema.exactOptional(),
+        cooling: CoolingSchema.exactOptional(),
+      })
       .exactOptional()
       .meta({ description: 'how the part is made' }),
   })
@@ -114,11 +118,9 @@ export const UnitSchema = z
   })
   .meta({ id: 'Unit', description: 'one measured unit' }) satisfies z.ZodType<Unit>;
 
-export const ApprovalRequestSchema = z
-  .strictObject({
-    part: PartSchema,
-    duty: DutySchema,
-    evidence: z.strictObject({ units: list(UnitSchema, { max: 1000 }).exactOptional() }).exactOptional(),
-    uncertainty: UncertaintyMap.exactOptional(),
-  })
-  .meta({ id: 'ApprovalRequest' }) satisfies z.ZodType<ApprovalRequest>;
+export const ApprovalRequestSchema = z.strictObject({
+  part: PartSchema,
+  duty: DutySchema,
+  evidence: z.strictObject({ units: list(UnitSchema, { max: 1000 }).exactOptional() }).exactOptional(),
+  uncertainty: UncertaintyMap.exactOptional(),
+}) satisfies z.ZodType<ApprovalRequest>;

@@ -53,4 +53,7 @@ export const CoolingSchema = z
     thermalResistance_K_per_W: z.number().min(1e-6).max(1e6).exactOptional(),
     surfaceArea_m2: area_m2.exactOptional(),
   })
-  .meta({ id: 'Cooling', description: 'by a thermal resistance, or by the surface in still air' }) satisfies z.ZodType<Cooling>;
+  .meta({
+    id: 'Cooling',
+    description: 'by a thermal resistance, or by the surface in still air',
+  }) satisfies z.ZodType<Cooling>;

@@ -34,7 +34,10 @@ export const UncertaintySchema = z
         contributions: list(
           z.object({
             pointer: z.string(),
-            sensitivity: z.number().nullable().meta({ description: 'partial derivative; null where the input has no uncertainty' }),
+            sensitivity: z
+              .number()
+              .nullable()
+              .meta({ description: 'partial derivative; null where the input has no uncertainty' }),
             standardUncertainty: z.number().meta({ description: "what the input contributes, in the output's unit" }),
             share: z.number().meta({ description: "of the output's variance; all add up to 1" }),
           }),

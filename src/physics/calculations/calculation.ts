@@ -10,5 +10,7 @@ export interface Calculation<Request, Answer> {
 
 /** The numbers among `values`; a quantity that the request did not ask for, or that does not exist, is left out. */
 export function numbersOf(values: Readonly<Record<string, number | null | undefined>>): Record<string, number> {
-  return Object.fromEntries(Object.entries(values).filter((entry): entry is [string, number] => typeof entry[1] === 'number'));
+  return Object.fromEntries(
+    Object.entries(values).filter((entry): entry is [string, number] => typeof entry[1] === 'number'),
+  );
 }

@@ -1,4 +1,4 @@
-import { type EnergyDensity, type EnergyDensityQuestion, energyDensity as densityOf } from '../energy-density.ts';
+import { energyDensity as densityOf, type EnergyDensity, type EnergyDensityQuestion } from '../energy-density.ts';
 import { type Calculation, numbersOf } from './calculation.ts';
 
 /** Energy density and pressure of a magnetic field. */

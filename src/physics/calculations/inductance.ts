@@ -27,6 +27,8 @@ export interface InductanceAnswer {
   readonly method: Method;
 }
 
+const TEMPERATURE_BESIDE = { '/temperature_degC': '/temperature_degC' };
+
 /** Temperature of a winding where none is given: the one that conductor standards state resistivity at. */
 const REFERENCE_TEMPERATURE_DEGC = 20;
 
@@ -57,6 +59,6 @@ function atCurrent(characteristic: FluxCharacteristic, current_A: number) {
 }
 
 function resistive(winding: Winding, inductance_H: number, temperature_degC = REFERENCE_TEMPERATURE_DEGC) {
-  const { resistance_ohm } = within('/winding', () => windingResistance(winding, temperature_degC));
+  const { resistance_ohm } = within('/winding', () => windingResistance(winding, temperature_degC), TEMPERATURE_BESIDE);
   return { resistance_ohm, timeConstant_s: inductance_H / resistance_ohm };
 }

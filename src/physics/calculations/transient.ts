@@ -1,6 +1,6 @@
 import { type Inductor, inductorCharacteristic } from '../inductor.ts';
 import { within } from '../invalid-quantity.ts';
-import { type Transient, type TransientRequest as Event, transient as transientOf } from '../transients/transient.ts';
+import { type TransientRequest as Event, type Transient, transient as transientOf } from '../transients/transient.ts';
 import { type Calculation, numbersOf } from './calculation.ts';
 
 export type TransientRequest = Event & {

@@ -59,13 +59,18 @@ function firstOrder<Request, Answer>(
   request: Request,
   uncertainty: Readonly<Record<string, number>>,
 ) {
-  const outputs = propagateOverRecord(request as object, uncertainty, (record) => mainOutputs(calculate(record as Request)));
+  const outputs = propagateOverRecord(request as object, uncertainty, (record) =>
+    mainOutputs(calculate(record as Request)),
+  );
   return {
     method: 'first-order' as const,
     outputs: Object.fromEntries(
       Object.entries(outputs).map(([output, { standardUncertainty, contributions }]) => [
         output,
-        { standardUncertainty, contributions: contributions.map(({ name, ...contribution }) => ({ pointer: name, ...contribution })) },
+        {
+          standardUncertainty,
+          contributions: contributions.map(({ name, ...contribution }) => ({ pointer: name, ...contribution })),
+        },
       ]),
     ),
   };

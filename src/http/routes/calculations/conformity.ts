@@ -40,12 +40,9 @@ const Answer = z
     outcome: z.enum(['pass', 'fail', 'inconclusive']),
     conformanceProbability: z.number(),
     nonconformanceProbability: z.number().meta({ description: 'computed apart, so that 1e-20 is not lost beside 1' }),
-    acceptance: z
-      .object({ lower: z.number().nullable(), upper: z.number().nullable() })
-      .nullable()
-      .meta({
-        description: 'the measured values that pass, ends included; a null bound is none; null where no value passes',
-      }),
+    acceptance: z.object({ lower: z.number().nullable(), upper: z.number().nullable() }).nullable().meta({
+      description: 'the measured values that pass, ends included; a null bound is none; null where no value passes',
+    }),
     margin: z.number().meta({ description: 'to the nearest limit, positive inside' }),
     normalisedMargin: z
       .number()

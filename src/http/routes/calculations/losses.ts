@@ -25,7 +25,9 @@ export const lossesRoute = (app: FastifyInstance) =>
       winding: WindingSchema,
       current: z.strictObject({
         direct_A: z.number().min(-1e9).max(1e9),
-        harmonics: list(z.strictObject({ frequency_Hz, rms_A: positiveCurrent_A }), { max: MAXIMUM_POINTS }).exactOptional(),
+        harmonics: list(z.strictObject({ frequency_Hz, rms_A: positiveCurrent_A }), {
+          max: MAXIMUM_POINTS,
+        }).exactOptional(),
       }),
       core: z.strictObject({ volume_m3, loss: SteinmetzLossSchema }).exactOptional(),
       flux: z
@@ -33,19 +35,28 @@ export const lossesRoute = (app: FastifyInstance) =>
           z.strictObject({ frequency_Hz, amplitude_T: z.number().min(0).max(100) }),
           z.strictObject({
             frequency_Hz,
-            phase: list(z.number().min(0).max(1), { min: 2, max: MAXIMUM_POINTS }).meta({ description: 'fractions of the period, increasing' }),
+            phase: list(z.number().min(0).max(1), { min: 2, max: MAXIMUM_POINTS }).meta({
+              description: 'fractions of the period, increasing',
+            }),
             fluxDensity_T: list(fluxDensity_T, { min: 2, max: MAXIMUM_POINTS }),
           }),
         ])
         .exactOptional()
-        .meta({ description: 'a sine for the Steinmetz equation, piecewise linear for the improved generalised Steinmetz equation' }),
-      temperature_degC: temperature_degC.meta({ description: '°C, of the winding; with cooling, of what surrounds the part' }),
+        .meta({
+          description:
+            'a sine for the Steinmetz equation, piecewise linear for the improved generalised Steinmetz equation',
+        }),
+      temperature_degC: temperature_degC.meta({
+        description: '°C, of the winding; with cooling, of what surrounds the part',
+      }),
       cooling: CoolingSchema.exactOptional(),
     }),
     answer: z
       .object({
         directResistance_ohm: z.number(),
-        harmonics: list(z.object({ frequency_Hz: z.number(), resistanceRatio: z.number(), power_W: z.number() })).exactOptional(),
+        harmonics: list(
+          z.object({ frequency_Hz: z.number(), resistanceRatio: z.number(), power_W: z.number() }),
+        ).exactOptional(),
         copper_W: z.number(),
         core_W: z.number(),
         total_W: z.number(),
@@ -53,7 +64,11 @@ export const lossesRoute = (app: FastifyInstance) =>
         temperature_degC: z.number().meta({ description: '°C, at which resistances and powers hold' }),
         conductorFillFactor: z.number().exactOptional(),
         method: MethodSchema,
-        methods: z.object({ copper: MethodSchema, core: MethodSchema.exactOptional(), rise: MethodSchema.exactOptional() }),
+        methods: z.object({
+          copper: MethodSchema,
+          core: MethodSchema.exactOptional(),
+          rise: MethodSchema.exactOptional(),
+        }),
       })
       .meta({ id: 'LossesAnswer' }),
     examples: [

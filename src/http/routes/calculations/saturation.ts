@@ -28,12 +28,9 @@ export const saturationRoute = (app: FastifyInstance) =>
       .object({
         dropCurrent_A: z.number().nullable().meta({ description: 'A; null where the inductance never drops so far' }),
         dropReason: z.string().exactOptional(),
-        fluxLimitCurrent_A: z
-          .number()
-          .nullable()
-          .meta({
-            description: 'A, smallest section at its saturation flux density; null where the material has none',
-          }),
+        fluxLimitCurrent_A: z.number().nullable().meta({
+          description: 'A, smallest section at its saturation flux density; null where the material has none',
+        }),
         fluxLimitReason: z.string().exactOptional(),
         energyAtFluxLimit: z.object({ total_J: z.number(), core_J: z.number(), gap_J: z.number() }).nullable(),
         fluxDensity_T: z.number().exactOptional().meta({ description: 'T, in the smallest section at current_A' }),

@@ -10,7 +10,7 @@ const solenoid = (turns: number, diameter_m: number, length_m: number, wireDiame
   turns,
   diameter_m,
   length_m,
-  wireDiameter_m,
+  ...(wireDiameter_m === undefined ? {} : { wireDiameter_m }),
 });
 const refusal = (coil: Solenoid): string => {
   try {

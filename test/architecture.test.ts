@@ -21,7 +21,7 @@ const ARROWS: Record<string, readonly string[]> = {
   demo: ['approval', 'evidence', 'physics'],
   compose: ['http', 'workers', 'storage', 'report', 'config', 'approval', 'evidence', 'metrology', 'physics', 'errors'],
   main: ['compose', 'config'],
-  cli: ['compose', 'config', 'demo', 'report', 'approval'],
+  cli: ['compose', 'config', 'demo', 'report', 'approval', 'evidence'],
   errors: [],
 };
 

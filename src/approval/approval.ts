@@ -1,7 +1,7 @@
 import type { Caution } from './cautions.ts';
+import type { CheckResult } from './check-result.ts';
 import type { Duty } from './duty.ts';
 import { evaluate } from './evaluate.ts';
-import type { CheckResult } from './judge.ts';
 import type { Part } from './part.ts';
 import { type Digests, digestOf, seal } from './record.ts';
 import type { ApprovalRequest, Evidence } from './request.ts';

@@ -1,4 +1,4 @@
-import { inWords } from './wording.ts';
+import { inWords } from '../evidence/wording.ts';
 
 export const CAUTION_CODES = [
   'stored-energy',

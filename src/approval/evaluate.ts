@@ -1,8 +1,10 @@
+import { type Judgement, judge, mostAdverse } from '../evidence/judge.ts';
+import type { Observation } from '../evidence/observation.ts';
 import { propagateOverRecord } from '../metrology/propagation.ts';
 import type { Caution } from './cautions.ts';
-import type { Check, Observation } from './check.ts';
+import type { Check } from './check.ts';
+import type { CheckResult } from './check-result.ts';
 import { CHECKS } from './checks/index.ts';
-import { type CheckResult, type Judgement, judge, mostAdverse } from './judge.ts';
 import { LIMITS } from './limits.ts';
 import { reliefOf } from './relief.ts';
 import type { ApprovalRequest } from './request.ts';

@@ -1,4 +1,4 @@
-import type { CheckResult } from './judge.ts';
+import type { CheckResult } from './check-result.ts';
 import type { ApprovalRequest } from './request.ts';
 
 export type Verdict = 'approve' | 'reject' | 'refer';

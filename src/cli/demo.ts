@@ -2,10 +2,10 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Approval } from '../approval/approval.ts';
-import { inWords, percent } from '../approval/wording.ts';
 import { compose } from '../compose.ts';
 import { readConfig } from '../config/index.ts';
 import { GATE_DRIVE_PARTS } from '../demo/gate-drive.ts';
+import { inWords, percent } from '../evidence/wording.ts';
 
 /**
  * The main job on the demo's parts: sends each to POST /v1/approvals of a service with a store of its own, and prints the checks

@@ -1,6 +1,6 @@
+import { inWords } from '../../evidence/wording.ts';
 import type { Check } from '../check.ts';
 import { COIL_LEVERS, constructionCharacteristic, observedInductance, temperatureInReach } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the construction give the inductance on the drawing? Small-signal, hence the differential inductance at the test current. */
 export const constructionInductance: Check = {

@@ -1,9 +1,9 @@
+import { inWords } from '../../evidence/wording.ts';
 import { methodAt } from '../../physics/characteristic.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import { fluxDensityInSmallestSection_T, saturationFluxDensity_T } from '../../physics/saturation.ts';
 import type { Check } from '../check.ts';
 import { atTemperature, COIL_LEVERS, COIL_POINTER, constructionCharacteristic, observed } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the smallest core section stay below its saturation flux density, by the duty's margin, at peak current and hot? */
 export const fluxDensity: Check = {

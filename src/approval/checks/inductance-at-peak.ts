@@ -1,6 +1,6 @@
+import { inWords } from '../../evidence/wording.ts';
 import type { Check } from '../check.ts';
 import { atTemperature, COIL_LEVERS, constructionCharacteristic, observedInductance } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the part still hold its inductance at the duty's peak current, hot? The differential one: that is what ripple meets. */
 export const inductanceAtPeak: Check = {

@@ -1,8 +1,8 @@
+import { inWords, percent } from '../../evidence/wording.ts';
 import { methodAt } from '../../physics/characteristic.ts';
 import { dropCurrent_A } from '../../physics/saturation.ts';
 import type { Check } from '../check.ts';
 import { COIL_LEVERS, constructionCharacteristic, observed } from '../construction.ts';
-import { inWords, percent } from '../wording.ts';
 
 /** Does the construction carry the drawing's current before its differential inductance has dropped by the drawing's share? */
 export const saturationCurrent: Check = {

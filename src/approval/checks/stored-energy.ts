@@ -1,7 +1,7 @@
+import { inWords } from '../../evidence/wording.ts';
 import { methodAt } from '../../physics/characteristic.ts';
 import type { Check } from '../check.ts';
 import { atTemperature, COIL_LEVERS, constructionCharacteristic, observed } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the part store the energy that the duty needs at its peak current? By ∫ i dλ, not ½LI². */
 export const storedEnergy: Check = {

@@ -1,8 +1,8 @@
+import { inWords } from '../../evidence/wording.ts';
 import { fieldMethod, isFieldCoil, worstFieldAtDistance } from '../../physics/fields/field.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import type { Check } from '../check.ts';
 import { observed } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the field stay below the limit at the duty's distance, in the worst direction, at peak current? */
 export const strayField: Check = {

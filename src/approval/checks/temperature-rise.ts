@@ -1,3 +1,5 @@
+import type { Observation } from '../../evidence/observation.ts';
+import { inWords } from '../../evidence/wording.ts';
 import { coreParameters } from '../../physics/core/core.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import type { WindingCurrent } from '../../physics/losses/copper-loss.ts';
@@ -5,11 +7,10 @@ import { coreLoss } from '../../physics/losses/core-loss.ts';
 import { type Cooling, temperatureRise as steadyRise } from '../../physics/losses/temperature-rise.ts';
 import type { Winding } from '../../physics/losses/winding-resistance.ts';
 import type { Method } from '../../physics/method.ts';
-import type { Check, Observation } from '../check.ts';
+import type { Check } from '../check.ts';
 import { COIL_POINTER, constructionCharacteristic, WINDING_LEVERS, windingResistanceAt } from '../construction.ts';
 import type { Construction } from '../part.ts';
 import type { ApprovalRequest } from '../request.ts';
-import { inWords } from '../wording.ts';
 
 /** What surrounds the part where neither duty nor drawing says: an indoor laboratory, at which rises are usually stated. */
 const LABORATORY_DEGC = 25;

@@ -1,9 +1,10 @@
+import type { Limit, Observation } from '../../evidence/observation.ts';
+import { inWords } from '../../evidence/wording.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import { type Transient, transient } from '../../physics/transients/transient.ts';
-import type { Check, CheckLimit, CheckName, Observation } from '../check.ts';
+import type { Check, CheckName } from '../check.ts';
 import { constructionCharacteristic, observed, windingResistanceAt } from '../construction.ts';
 import type { ApprovalRequest } from '../request.ts';
-import { inWords } from '../wording.ts';
 
 /** Temperature of the winding where the duty names none: cold, where its resistance helps least to bring the current down. */
 const COLD_DEGC = 20;
@@ -67,7 +68,7 @@ function turnOffCheck({ name, what, unit, limitField, quantity }: Question): Che
       if (!interruption || upper === undefined) return [];
       const course = interruptionOf(request);
       if (!course) return [];
-      const limit: CheckLimit = { upper };
+      const limit: Limit = { upper };
       const common = { what: `${what} from ${inWords(request.duty.peakCurrent_A, 'A')}`, unit, limit };
       const found = quantity(course, interruption);
       if ('value' in found) return [{ ...common, ...observed(found.value, course.method) }];

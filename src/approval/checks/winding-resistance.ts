@@ -1,6 +1,6 @@
+import { inWords } from '../../evidence/wording.ts';
 import type { Check } from '../check.ts';
 import { observed, WINDING_LEVERS, windingResistanceAt } from '../construction.ts';
-import { inWords } from '../wording.ts';
 
 /** Does the winding as constructed stay below the drawing's resistance at the drawing's temperature? */
 export const windingResistance: Check = {

@@ -1,7 +1,6 @@
 import { conformity } from '../metrology/conformity.ts';
 import type { Method } from '../physics/method.ts';
-import type { CheckLimit, CheckName, Observation } from './check.ts';
-import type { Relief } from './relief.ts';
+import type { Limit, Observation } from './observation.ts';
 import { inWords, percent } from './wording.ts';
 
 export type Outcome = 'pass' | 'fail' | 'inconclusive';
@@ -15,7 +14,7 @@ export interface Observed {
 /** One observation, decided. */
 export interface Judgement {
   readonly outcome: Outcome;
-  readonly limit: CheckLimit;
+  readonly limit: Limit;
   readonly method: Method;
   /** A sentence that an engineer can read. */
   readonly detail: string;
@@ -24,14 +23,6 @@ export interface Judgement {
   readonly margin?: number;
   readonly conformanceProbability?: number;
   readonly serial?: string;
-}
-
-/** A check's answer: its most adverse observation, and every unit's where it looked at measured units. */
-export interface CheckResult extends Omit<Judgement, 'serial'> {
-  readonly check: CheckName;
-  /** On what did not pass: for each input, the smallest change that would make it pass. */
-  readonly relief?: readonly Relief[];
-  readonly units?: readonly Judgement[];
 }
 
 const SEVERITY: Record<Outcome, number> = { pass: 0, inconclusive: 1, fail: 2 };
@@ -99,13 +90,13 @@ function sentence({ what, unit, limit, atLeast }: Observation, d: Decided): stri
   return `${observed}${uncertainty}${against}.`;
 }
 
-function limitInWords({ lower, upper }: CheckLimit, unit: string): string {
+function limitInWords({ lower, upper }: Limit, unit: string): string {
   if (lower !== undefined && upper !== undefined) return `of ${inWords(lower, unit)} to ${inWords(upper, unit)}`;
   if (lower !== undefined) return `of at least ${inWords(lower, unit)}`;
   return `of at most ${inWords(upper ?? 0, unit)}`;
 }
 
-/** The judgement that a check answers with: the most adverse outcome, and of those the least probable to conform. */
+/** Of several judgements, the most adverse: the worst outcome, and of those the one deepest in doubt. */
 export function mostAdverse(judgements: readonly Judgement[]): Judgement {
   return judgements.reduce((worst, candidate) => {
     const bySeverity = SEVERITY[candidate.outcome] - SEVERITY[worst.outcome];

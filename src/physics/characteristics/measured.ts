@@ -3,6 +3,7 @@ import { InvalidQuantity } from '../invalid-quantity.ts';
 import type { Method } from '../method.ts';
 import { fivePointSlopes, hermite, limitSlopes, type PiecewiseCubic } from '../numerics/monotone-interpolation.ts';
 import { findRoot } from '../numerics/roots.ts';
+import { sweepError } from './sweep-error.ts';
 
 /** Inductance over current as a rig reads it: differential dλ/di (small signal on a bias) or apparent λ/i (one large pulse). */
 export interface Sweep {
@@ -10,6 +11,9 @@ export interface Sweep {
   readonly current_A: readonly number[];
   readonly inductance_H: readonly number[];
 }
+
+/** A current that was computed as the last reading is not refused for its last bit. */
+const ROUNDING = 4 * Number.EPSILON;
 
 /** λ and its relatives for 0 ≤ i ≤ the last reading. */
 interface Branch {
@@ -28,11 +32,25 @@ interface Branch {
  * - apparent: λ = L·i is interpolated through the readings, with slopes L + i dL/di, which the readings of L determine better
  *   than those of λ, limited so that λ keeps rising.
  *
- * Energy ∫ i dλ and co-energy are the exact integrals of the interpolant, never ½·L·i². `relativeError` is the largest
- * difference to straight lines between the same readings, in λ or energy; between readings dλ/di of an apparent sweep is less sure.
+ * Energy ∫ i dλ and co-energy are the exact integrals of the interpolant, never ½·L·i². `relativeError` bounds what the
+ * readings leave open in λ and energy (see `sweepError`); between them, dλ/di of an apparent sweep is less sure.
  *
  * Throws `InvalidQuantity` at `/current_A…` or `/inductance_H…`: fewer than two readings, unequal lengths, currents that do not
  * increase or are negative, an inductance that is not positive, an apparent inductance that falls so steeply that λ = L·i does.
+ *
+ * Error of the interpolation over nine analytic curves λ = L∞·i + Λ·f(i), f of the three saturation laws, readings equally spaced up to
+ * 1, 2 and 4 times the current of half inductance; typical (geometric mean), worst; dλ/di relative to its value at zero:
+ *
+ * | readings | kind | λ | energy | dλ/di |
+ * |---|---|---|---|---|
+ * | 6 | differential | 7e-4, 4e-2 | 1e-3, 5e-2 | 1e-3, 5e-2 |
+ * | 6 | apparent | 8e-4, 2e-2 | 1e-3, 2e-2 | 3e-3, 2e-2 |
+ * | 10 | differential | 4e-5, 1e-3 | 7e-5, 2e-3 | 1e-4, 3e-3 |
+ * | 10 | apparent | 1e-4, 2e-3 | 1e-4, 2e-3 | 3e-4, 3e-3 |
+ * | 20 | differential | 2e-6, 6e-5 | 3e-6, 1e-4 | 5e-6, 2e-4 |
+ * | 20 | apparent | 7e-6, 1e-4 | 1e-5, 2e-4 | 3e-5, 5e-4 |
+ * | 50 | differential | 4e-8, 2e-6 | 5e-8, 3e-6 | 9e-8, 6e-6 |
+ * | 50 | apparent | 2e-7, 6e-6 | 2e-7, 5e-6 | 2e-6, 2e-5 |
  */
 export function measuredCharacteristic(sweep: Sweep): FluxCharacteristic {
   checkReadings(sweep);
@@ -42,7 +60,7 @@ export function measuredCharacteristic(sweep: Sweep): FluxCharacteristic {
   const maximumCurrent_A = current.at(-1)!;
   const magnitude = (current_A: number) => {
     const i = Math.abs(current_A);
-    if (i <= maximumCurrent_A) return i;
+    if (i <= maximumCurrent_A * (1 + ROUNDING)) return Math.min(i, maximumCurrent_A);
     throw new InvalidQuantity('', `${current_A} A is beyond the last reading of the sweep, at ${maximumCurrent_A} A`);
   };
   const fluxLinkage_Wb = (current_A: number) => Math.sign(current_A) * branch.fluxLinkage_Wb(magnitude(current_A));
@@ -50,7 +68,7 @@ export function measuredCharacteristic(sweep: Sweep): FluxCharacteristic {
   return {
     kind: 'measured',
     maximumCurrent_A,
-    method: methodOf(sweep, straightLineDifference(sweep.kind, current, inductance, branch)),
+    method: methodOf(sweep, sweepError(sweep.kind, current, inductance, branch.fluxLinkage_Wb, branch.energy_J)),
     slopeTurns_A: branch.slopeTurns_A().slice(1),
     fluxLinkage_Wb,
     differentialInductance_H: (current_A) => branch.differentialInductance_H(magnitude(current_A)),
@@ -140,13 +158,14 @@ function currentAt(
   fluxAt: (current_A: number) => number,
 ): number {
   const last = atReading.length - 1;
-  if (!(fluxLinkage_Wb <= atReading[last]!)) {
+  if (!(fluxLinkage_Wb <= atReading[last]! * (1 + ROUNDING))) {
     throw new InvalidQuantity(
       '',
       `${fluxLinkage_Wb} Wb is beyond the last reading of the sweep, at ${atReading[last]} Wb`,
     );
   }
   const upper = atReading.findIndex((linkage) => linkage >= fluxLinkage_Wb);
+  if (upper < 0) return current[last]!;
   if (upper === 0 || atReading[upper] === fluxLinkage_Wb) return current[upper]!;
   return findRoot((i) => fluxAt(i) - fluxLinkage_Wb, current[upper - 1]!, current[upper]!);
 }
@@ -186,30 +205,6 @@ function checkReadings({ kind, current_A, inductance_H }: Sweep): void {
       );
     }
   });
-}
-
-/** Largest relative difference, over the readings, of λ and energy to those of straight lines through the same readings. */
-function straightLineDifference(
-  kind: Sweep['kind'],
-  current: readonly number[],
-  inductance: readonly number[],
-  branch: Branch,
-): number {
-  let [linkage, energy, worst] = [0, 0, 0];
-  for (let k = 1; k < current.length; k++) {
-    const [i0, i1, l0, l1] = [current[k - 1]!, current[k]!, inductance[k - 1]!, inductance[k]!];
-    if (kind === 'differential') {
-      linkage += ((l0 + l1) / 2) * (i1 - i0);
-      energy += ((i1 - i0) / 6) * (i0 * (2 * l0 + l1) + i1 * (l0 + 2 * l1));
-    } else {
-      const rise = i1 * l1 - i0 * l0;
-      linkage += rise;
-      energy += ((i0 + i1) / 2) * rise;
-    }
-    const [linkageHere, energyHere] = [branch.fluxLinkage_Wb(i1), branch.energy_J(i1)];
-    worst = Math.max(worst, Math.abs(linkage / linkageHere - 1), Math.abs(energy / energyHere - 1));
-  }
-  return worst;
 }
 
 function methodOf({ kind, current_A }: Sweep, relativeError: number): Method {

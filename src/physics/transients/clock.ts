@@ -3,7 +3,9 @@ import { InvalidQuantity } from '../invalid-quantity.ts';
 import { type Collocation, radauCollocation, seriesThrough } from '../numerics/collocation.ts';
 import { type LegendreSeries, seriesIntegral, seriesValue } from '../numerics/legendre-series.ts';
 import {
+  continued,
   type Drive,
+  driveFrom,
   responseCurrent,
   responseIntegral,
   responseSigma,
@@ -12,37 +14,65 @@ import {
   settledCurrent,
 } from './unit-response.ts';
 
-/** Time and the integrals over it along a response in σ (see unit-response.ts): dt = L_d dσ. */
+/** Time along a response in σ (see unit-response.ts), whose current moves one way: dt = L_d dσ. */
 export interface Clock {
-  /** t(σ) in s. */
-  timeAt(sigma: number): number;
-  /** The inverse, in 1/Ω. */
-  sigmaAt(time_s: number): number;
-  /** ∫ i dt from the start, in A·s. */
-  chargeTo(sigma: number): number;
-  /** ∫ i² dt from the start, in A²·s. */
-  squareTo(sigma: number): number;
+  /** When the current is there, in s; Infinity where it is not, or beyond where the clock ends. */
+  timeOf(current_A: number): number;
+  /** Current and dλ/dt, the voltage across the inductance. */
+  at(time_s: number): { readonly current_A: number; readonly voltage_V: number };
+  /** From the start: ∫ i dt in A·s, ∫ i² dt in A²·s. */
+  integralsTo(time_s: number): { readonly charge: number; readonly square: number };
 }
 
-/** Where a clock has to reach: whichever of the two comes last where both are finite is not needed, one is enough. */
+/** Where a clock has to reach: a current, or a time, whichever comes first; ±Infinity as a current for as far as it goes. */
 export interface ClockEnd {
-  readonly sigma: number;
+  readonly current_A: number;
   readonly time_s: number;
 }
 
 /** The clock of a constant inductance: closed forms. */
-export function linearClock(inductance_H: number, drive: Drive): Clock {
+export function linearClock(inductance_H: number, drive: Drive, end: ClockEnd): Clock {
+  const sigmaEnd = reaches(drive, end.current_A) ? responseSigma(drive, end.current_A) : Infinity;
+  const sigmaAt = (time_s: number) => Math.min(time_s / inductance_H, sigmaEnd);
   return {
-    timeAt: (sigma) => inductance_H * sigma,
-    sigmaAt: (time_s) => time_s / inductance_H,
-    chargeTo: (sigma) => inductance_H * responseIntegral(drive, sigma),
-    squareTo: (sigma) => inductance_H * responseSquareIntegral(drive, sigma),
+    timeOf: (current_A) => (reaches(drive, current_A) ? inductance_H * responseSigma(drive, current_A) : Infinity),
+    at: (time_s) => {
+      const sigma = sigmaAt(time_s);
+      return {
+        current_A: sigma === sigmaEnd ? end.current_A : responseCurrent(drive, sigma),
+        voltage_V: responseVoltage(drive, sigma),
+      };
+    },
+    integralsTo: (time_s) => {
+      const sigma = sigmaAt(time_s);
+      return {
+        charge: inductance_H * responseIntegral(drive, sigma),
+        square: inductance_H * responseSquareIntegral(drive, sigma),
+      };
+    },
   };
 }
 
+/** The clock of a current that stays where it is, because source and resistance balance. */
+export function standingClock(current_A: number): Clock {
+  return {
+    timeOf: (current) => (current === current_A ? 0 : Infinity),
+    at: () => ({ current_A, voltage_V: 0 }),
+    integralsTo: (time_s) => ({ charge: current_A * time_s, square: current_A * current_A * time_s }),
+  };
+}
+
+/** Whether the response comes to a current at a finite time. */
+function reaches(drive: Drive, current_A: number): boolean {
+  const [from, to] = [drive.initialCurrent_A, settledCurrent(drive)];
+  return current_A === from || (current_A - from) * (to - current_A) > 0;
+}
+
 interface Panel {
-  readonly startSigma: number;
+  /** The response from the panel's own start. */
+  readonly drive: Drive;
   readonly width: number;
+  readonly endCurrent_A: number;
   readonly startTime_s: number;
   readonly startCharge: number;
   readonly startSquare: number;
@@ -56,71 +86,104 @@ const RULE: Collocation = radauCollocation(12);
 const TAIL_TOLERANCE = 1e-13;
 
 /** How far ∫ L_d di over a panel may be from λ(i₁) − λ(i₀), relative to λ: catches a knee that falls between the nodes. */
-const FLUX_TOLERANCE = 1e-12;
+const FLUX_TOLERANCE = 1e-11;
 
 /**
  * The clock of any characteristic: panels of 12-point Radau quadrature, halved until the integrands' Legendre series have
- * converged and the flux linkage is conserved, from σ = 0 to `end.sigma` or until `end.time_s` is covered, whichever comes
- * first. `sigmaLimit` is where the characteristic ends (Infinity for a construction); returns null where that comes first.
+ * converged and the flux linkage is conserved, until the end's current or time is reached, whichever comes first. Null where the
+ * characteristic ends before that.
  *
- * A corner or jump of L_d (a measured sweep's readings) is closed in on by halving; a characteristic that is itself noisy by
- * more than the tolerance costs more panels but still ends.
+ * The way is cut at known currents, and the response counted anew from each: at zero and where L_d may have a corner
+ * (`slopeTurns_A`), and at every decade on the way down to zero, because counted from the start a small current would be the
+ * difference of two large ones. A corner that is not announced is closed in on by halving; a characteristic that is itself noisy
+ * by more than the tolerance costs more panels but still ends.
  */
-export function panelClock(
-  characteristic: FluxCharacteristic,
-  drive: Drive,
-  end: ClockEnd,
-  sigmaLimit: number,
-): Clock | null {
+export function panelClock(characteristic: FluxCharacteristic, drive: Drive, end: ClockEnd): Clock | null {
   const panels: Panel[] = [];
-  const lastSigma = Math.min(end.sigma, sigmaLimit);
-  const state = { sigma: 0, time_s: 0, charge: 0, square: 0 };
-  // L_d is even in i and may peak at zero current: a panel never straddles it.
-  const sigmaZero = drive.initialCurrent_A * settledCurrent(drive) < 0 ? responseSigma(drive, 0) : Infinity;
-  let width = firstWidth(characteristic, drive, end, lastSigma);
+  const total: Total = { time_s: 0, charge: 0, square: 0 };
+  const cuts = cutsBetween(characteristic, drive, end.current_A);
+  let from = drive.initialCurrent_A;
+  for (const to of cuts) {
+    if (total.time_s >= end.time_s) break;
+    addPanels(panels, total, characteristic, driveFrom(drive.drive_V, drive.resistance_ohm, from), {
+      ...end,
+      current_A: to,
+    });
+    from = to;
+  }
+  const last = cuts.at(-1) ?? drive.initialCurrent_A;
+  // The way ends where it should, or only as far as the characteristic goes.
+  if (last !== end.current_A && total.time_s < end.time_s) return null;
+  return clockOver(panels, characteristic);
+}
+
+interface Total {
+  time_s: number;
+  charge: number;
+  square: number;
+}
+
+/** Currents at which the way to `target_A` is cut, in order, the last one the target or the end of the characteristic. */
+function cutsBetween(
+  { slopeTurns_A = [], maximumCurrent_A }: FluxCharacteristic,
+  { initialCurrent_A }: Drive,
+  target_A: number,
+): number[] {
+  const last = bounded(target_A, maximumCurrent_A);
+  if (last === initialCurrent_A) return [];
+  const decades = Array.from({ length: 16 }, (_, k) => initialCurrent_A * 10 ** -(k + 1));
+  const direction = Math.sign(last - initialCurrent_A);
+  const inside = [0, ...slopeTurns_A.flatMap((turn) => [turn, -turn]), ...decades].filter(
+    (current) => (current - initialCurrent_A) * (last - current) > 0,
+  );
+  return [...new Set(inside)].sort((a, b) => direction * (a - b)).concat(last);
+}
+
+/** Panels from the drive's initial current to the end's current or time. */
+function addPanels(panels: Panel[], total: Total, characteristic: FluxCharacteristic, way: Drive, end: ClockEnd): void {
+  let left = reaches(way, end.current_A) ? responseSigma(way, end.current_A) : Infinity;
+  let drive = way;
+  let width = Math.min(
+    left,
+    (end.time_s - total.time_s) / characteristic.differentialInductance_H(way.initialCurrent_A),
+  );
+  if (!(width > 0 && Number.isFinite(width))) throw outOfRange();
   let halvings = 0;
-  while (state.sigma < lastSigma && state.time_s < end.time_s) {
-    const stop = state.sigma < sigmaZero ? Math.min(lastSigma, sigmaZero) : lastSigma;
-    // A sliver left before the stop would cost a panel of its own.
-    const wanted = state.sigma + 1.001 * width >= stop ? stop - state.sigma : width;
-    const panel = integratePanel(characteristic, drive, state.sigma, wanted);
-    const quality = judge(panel, state, wanted);
-    const noise = halvings >= 45 && (panels.length > 0 || quality < 1e4);
+  while (left > 0 && total.time_s < end.time_s) {
+    // A sliver left before the end would cost a panel of its own.
+    const wanted = 1.001 * width >= left ? left : width;
+    const endCurrent_A = wanted === left ? end.current_A : responseCurrent(drive, wanted);
+    const panel = integratePanel(characteristic, drive, wanted, endCurrent_A);
+    const truncation = judge(panel, total, wanted);
+    const quality = Math.max(truncation, panel.fluxLost);
+    const noise = halvings >= 40 && (panels.length > 0 || quality < 1e4);
     if (!(quality <= 1) && !noise) {
       width = wanted / 2;
       if (++halvings > 2100 || Number.isNaN(quality)) throw outOfRange();
       continue;
     }
     panels.push({
-      startSigma: state.sigma,
+      drive,
       width: wanted,
-      startTime_s: state.time_s,
-      startCharge: state.charge,
-      startSquare: state.square,
+      endCurrent_A,
+      startTime_s: total.time_s,
+      startCharge: total.charge,
+      startSquare: total.square,
       inductance: panel.inductance,
     });
     if (panels.length > 20_000) throw outOfRange();
-    state.sigma = wanted === stop - state.sigma ? stop : state.sigma + wanted;
-    state.time_s += panel.time_s;
-    state.charge += panel.charge;
-    state.square += panel.square;
-    width = wanted * (quality < 1e-3 ? 3 : quality < 0.1 ? 1.5 : 1);
+    total.time_s += panel.time_s;
+    total.charge += panel.charge;
+    total.square += panel.square;
+    left = wanted === left ? 0 : left - wanted;
+    drive = continued(drive, wanted, endCurrent_A);
+    width = wanted * (truncation < 1e-3 ? 3 : truncation < 0.1 ? 1.5 : 1);
     halvings = 0;
   }
-  if (sigmaLimit < end.sigma && state.time_s < end.time_s) return null;
-  return clockOver(panels, characteristic, drive);
 }
 
 function outOfRange(): InvalidQuantity {
   return new InvalidQuantity('', 'the transient leaves the range of numbers that can be calculated with');
-}
-
-/** A first panel width: an eighth of the way, or the whole time at the initial inductance; halving does the rest. */
-function firstWidth(characteristic: FluxCharacteristic, drive: Drive, end: ClockEnd, lastSigma: number): number {
-  const byTime = end.time_s / characteristic.differentialInductance_H(drive.initialCurrent_A);
-  const width = Math.min(lastSigma / 8, byTime);
-  if (!(width > 0 && Number.isFinite(width))) throw outOfRange();
-  return width;
 }
 
 interface PanelIntegrals {
@@ -130,25 +193,25 @@ interface PanelIntegrals {
   readonly inductance: LegendreSeries;
   /** The last two Legendre coefficients' magnitude of L_d, i·L_d and i²·L_d. */
   readonly tails: readonly [number, number, number];
-  /** |∫ L_d di − Δλ| over the larger |λ| at the ends. */
-  readonly fluxMismatch: number;
+  /** |∫ L_d di − Δλ| over the larger |λ| at the ends and the tolerance: 1 or less is good. */
+  readonly fluxLost: number;
 }
 
 function integratePanel(
   characteristic: FluxCharacteristic,
   drive: Drive,
-  startSigma: number,
   width: number,
+  endCurrent_A: number,
 ): PanelIntegrals {
   const { stages, nodes, weights } = RULE;
   const integrands = [new Float64Array(stages), new Float64Array(stages), new Float64Array(stages)] as const;
   const sums = [0, 0, 0];
   let flux = 0;
-  let current = drive.initialCurrent_A;
   for (let j = 0; j < stages; j++) {
-    const sigma = startSigma + (width * (1 + nodes[j]!)) / 2;
-    current = responseCurrent(drive, sigma);
-    let value = characteristic.differentialInductance_H(current);
+    const sigma = (width * (1 + nodes[j]!)) / 2;
+    const current = j === stages - 1 ? endCurrent_A : responseCurrent(drive, sigma);
+    // Rounding may put it past the last reading.
+    let value = characteristic.differentialInductance_H(bounded(current, characteristic.maximumCurrent_A));
     flux += weights[j]! * value * responseVoltage(drive, sigma);
     for (let power = 0; power < 3; power++) {
       integrands[power]![j] = value;
@@ -158,8 +221,8 @@ function integratePanel(
   }
   const series = integrands.map((values) => seriesThrough(RULE, values));
   const tails = series.map((c) => Math.abs(c[stages - 1]!) + Math.abs(c[stages - 2]!));
-  const start = characteristic.fluxLinkage_Wb(responseCurrent(drive, startSigma));
-  const finish = characteristic.fluxLinkage_Wb(current);
+  const start = characteristic.fluxLinkage_Wb(drive.initialCurrent_A);
+  const finish = characteristic.fluxLinkage_Wb(bounded(endCurrent_A, characteristic.maximumCurrent_A));
   const scale = Math.max(Math.abs(start), Math.abs(finish));
   return {
     time_s: width * sums[0]!,
@@ -167,54 +230,58 @@ function integratePanel(
     square: width * sums[2]!,
     inductance: series[0]!,
     tails: [tails[0]!, tails[1]!, tails[2]!],
-    fluxMismatch: scale === 0 ? 0 : Math.abs(width * flux - (finish - start)) / scale,
+    // Where the current has died away into subnormal numbers there is no flux to lose.
+    fluxLost: scale < 1e-280 ? 0 : Math.abs(width * flux - (finish - start)) / scale / FLUX_TOLERANCE,
   };
 }
 
-/** The panel's worst error over its tolerance: 1 or less is accepted. */
-function judge(
-  panel: PanelIntegrals,
-  before: { readonly time_s: number; readonly charge: number; readonly square: number },
-  width: number,
-): number {
+/** The panel's worst truncation over its tolerance: 1 or less is good. */
+function judge(panel: PanelIntegrals, before: Total, width: number): number {
   const [time, charge, square] = panel.tails;
   const ratio = (tail: number, total: number) => (tail === 0 ? 0 : (width * tail) / (TAIL_TOLERANCE * total));
   return Math.max(
     ratio(time, before.time_s + panel.time_s),
     ratio(charge, Math.abs(before.charge) + Math.abs(panel.charge)),
     ratio(square, before.square + panel.square),
-    panel.fluxMismatch / FLUX_TOLERANCE,
   );
 }
 
-function clockOver(panels: readonly Panel[], characteristic: FluxCharacteristic, drive: Drive): Clock {
-  const panelAtSigma = (sigma: number) => lastStarting(panels, (panel) => panel.startSigma <= sigma);
-  const partial = (sigma: number) => {
-    const panel = panelAtSigma(sigma);
-    return { panel, integrals: integratePanel(characteristic, drive, panel.startSigma, sigma - panel.startSigma) };
+function clockOver(panels: readonly Panel[], characteristic: FluxCharacteristic): Clock {
+  const first = panels[0]!;
+  const direction = Math.sign(panels.at(-1)!.endCurrent_A - first.drive.initialCurrent_A);
+  const place = (time_s: number) => {
+    const panel = lastStarting(panels, (candidate) => candidate.startTime_s <= time_s);
+    const x = positionAt(panel.inductance, panel.width, time_s - panel.startTime_s);
+    const sigma = (panel.width * (1 + x)) / 2;
+    return { panel, sigma, current_A: x === 1 ? panel.endCurrent_A : responseCurrent(panel.drive, sigma) };
   };
   return {
-    timeAt: (sigma) => {
-      if (sigma === 0) return 0;
-      const { panel, integrals } = partial(sigma);
-      return panel.startTime_s + integrals.time_s;
+    timeOf: (current_A) => {
+      const panel = lastStarting(
+        panels,
+        (candidate) => direction * (current_A - candidate.drive.initialCurrent_A) >= 0,
+      );
+      if (direction * (current_A - panel.endCurrent_A) > 0) return Number.POSITIVE_INFINITY;
+      if (current_A === panel.drive.initialCurrent_A) return panel.startTime_s;
+      const sigma = current_A === panel.endCurrent_A ? panel.width : responseSigma(panel.drive, current_A);
+      return panel.startTime_s + integratePanel(characteristic, panel.drive, sigma, current_A).time_s;
     },
-    sigmaAt: (time_s) => {
-      const panel = lastStarting(panels, (candidate) => candidate.startTime_s <= time_s);
-      const x = positionAt(panel.inductance, panel.width, time_s - panel.startTime_s);
-      return panel.startSigma + (panel.width * (1 + x)) / 2;
+    at: (time_s) => {
+      const { panel, sigma, current_A } = place(time_s);
+      return { current_A, voltage_V: responseVoltage(panel.drive, sigma) };
     },
-    chargeTo: (sigma) => {
-      if (sigma === 0) return 0;
-      const { panel, integrals } = partial(sigma);
-      return panel.startCharge + integrals.charge;
-    },
-    squareTo: (sigma) => {
-      if (sigma === 0) return 0;
-      const { panel, integrals } = partial(sigma);
-      return panel.startSquare + integrals.square;
+    integralsTo: (time_s) => {
+      const { panel, sigma, current_A } = place(time_s);
+      if (sigma === 0) return { charge: panel.startCharge, square: panel.startSquare };
+      const { charge, square } = integratePanel(characteristic, panel.drive, sigma, current_A);
+      return { charge: panel.startCharge + charge, square: panel.startSquare + square };
     },
   };
+}
+
+/** A current held within ±limit: an accepted one may be beyond it by rounding. */
+export function bounded(current_A: number, limit_A: number): number {
+  return Math.max(-limit_A, Math.min(limit_A, current_A));
 }
 
 /** The last of an ascending, non-empty list that satisfies `started`; the first where none does. */

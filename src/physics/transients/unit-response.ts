@@ -12,6 +12,17 @@ export interface Drive {
   /** All the resistance in the loop, ≥ 0, in Ω. */
   readonly resistance_ohm: number;
   readonly initialCurrent_A: number;
+  /** U − R·i at the start: across the inductance, in V. */
+  readonly initialVoltage_V: number;
+}
+
+export function driveFrom(drive_V: number, resistance_ohm: number, initialCurrent_A: number): Drive {
+  return { drive_V, resistance_ohm, initialCurrent_A, initialVoltage_V: drive_V - resistance_ohm * initialCurrent_A };
+}
+
+/** The same response counted from σ on, where its current is `current_A`: the voltage dies away and is not a difference. */
+export function continued(drive: Drive, sigma: number, current_A: number): Drive {
+  return { ...drive, initialCurrent_A: current_A, initialVoltage_V: responseVoltage(drive, sigma) };
 }
 
 /** (1 − e^{−z})/z, 1 at z = 0. */
@@ -62,8 +73,8 @@ export function responseCurrent({ drive_V, resistance_ohm, initialCurrent_A }: D
 }
 
 /** di/dσ = U − R·i = (U − R·i₀)·e^{−Rσ}: the voltage across the inductance, in V. */
-export function responseVoltage({ drive_V, resistance_ohm, initialCurrent_A }: Drive, sigma: number): number {
-  return (drive_V - resistance_ohm * initialCurrent_A) * Math.exp(-resistance_ohm * sigma);
+export function responseVoltage({ resistance_ohm, initialVoltage_V }: Drive, sigma: number): number {
+  return initialVoltage_V * Math.exp(-resistance_ohm * sigma);
 }
 
 /** The current that the loop tends to: U/R, or ±Infinity with no resistance (the initial current if nothing drives it). */

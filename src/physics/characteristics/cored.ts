@@ -57,8 +57,10 @@ interface Circuit {
  *
  * | quantity | domain | worst relative error | against |
  * |---|---|---|---|
- * | λ, apparent L, energy, co-energy, split | µ 1 to 1e6, gap 0 to half the core's length, i 1e-30 A to 1e6 × flux limit | 3e-15 | mpmath, 50 digits |
- * | differential L | as above | 2e-11, within 2e-15 of its condition | mpmath, 50 digits |
+ * | λ, apparent L, energy, co-energy | µ 1 to 1e6, gap 0 to half the core's length, i 1e-30 A to 1e6 × flux limit | 9e-16 | mpmath, 130 digits |
+ * | the core's share of the energy | as above | 9e-15 | as above |
+ * | differential L | as above | 3e-12, or 4e-16 of its condition at a sharp knee | as above |
+ * | current at the saturation flux density | as above | 3e-13, where B hardly determines H | as above |
  */
 export function coredCharacteristic(coil: Cored, temperature_degC?: number): CoredCharacteristic {
   const circuit = circuitOf(coil, temperature_degC);

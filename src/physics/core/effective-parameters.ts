@@ -88,8 +88,8 @@ interface Section {
  *
  * | core | domain | worst relative error | against |
  * |---|---|---|---|
- * | ring | outer/inner 1 + 1e-9 to 1e6 | 4e-16 | the integrals over the radius, mpmath 50 digits |
- * | E, U | 60 random proportions, 1e-6 to 1e3 m | 5e-16 | the sums in exact fractions |
+ * | ring | outer/inner 1 + 1e-9 to 1e6 | 5e-16 | the integrals over the radius, mpmath 60 digits |
+ * | E, U | 30 random proportions each, 1e-6 to 1e3 m | 6e-16 | the sums section by section, mpmath 60 digits |
  */
 export function effectiveParameters(dimensions: CoreDimensions): EffectiveParameters {
   switch (dimensions.kind) {

@@ -1,0 +1,73 @@
+import type { FoldedPiece, SignedPiece } from './offset-density.ts';
+
+/**
+ * A rectangle in the plane of the offsets (δ, z), z ≥ 0 and δ of the radial piece's sign, with the densities at its edges.
+ * `corner`: it touches the origin, where the kernel of two filaments is singular.
+ */
+export interface Panel {
+  readonly radial: SignedPiece;
+  readonly axial: FoldedPiece;
+  readonly corner: boolean;
+}
+
+/** Largest ratio of a panel's far edge to its near edge, and of the two sides of a panel in the corner. */
+const GRADING = 3;
+/** A ratio that is exactly GRADING but for rounding is not cut once more. */
+const ROUNDING_ALLOWANCE = 1 + 1e-9;
+/** Relative to the radii, which are about 1: what lies inside a panel this near the origin is below 1e-15 of the whole. */
+const SMALLEST = 1e-18;
+/** Along a line through the origin the corner rule serves a panel this long. */
+const LONGEST_LINE_CORNER = 1e-2;
+
+/** Appends the panels of one pair of pieces: a geometric series of rectangles around the origin, so few however thin or near. */
+export function cutIntoPanels(radial: SignedPiece, axial: FoldedPiece, panels: Panel[]): void {
+  const radialEnd = radial.start + radial.width;
+  const axialEnd = axial.start + axial.width;
+  const near = Math.max(radial.start, axial.start);
+  const far = Math.max(radialEnd, axialEnd);
+  if (near * GRADING * ROUNDING_ALLOWANCE >= far) {
+    panels.push({ radial, axial, corner: false });
+    return;
+  }
+  if (near === 0) {
+    const onLine = radial.width === 0 || axial.width === 0;
+    const square = Math.min(radialEnd, axialEnd) * GRADING * ROUNDING_ALLOWANCE >= far;
+    if (onLine ? far <= LONGEST_LINE_CORNER : square) {
+      panels.push({ radial, axial, corner: true });
+      return;
+    }
+  }
+  if (far <= SMALLEST) {
+    panels.push({ radial, axial, corner: near === 0 });
+    return;
+  }
+  const at = far / GRADING;
+  for (const r of cutRadial(radial, at)) for (const z of cutAxial(axial, at)) cutIntoPanels(r, z, panels);
+}
+
+function cutRadial(piece: SignedPiece, at: number): SignedPiece[] {
+  const { start, width, density, sign } = piece;
+  if (at <= start || at >= start + width) return [piece];
+  const [near, far] = [at - start, start + width - at];
+  const middle = between(density, near / width);
+  return [
+    { start, width: near, density: [density[0], middle], sign },
+    { start: at, width: far, density: [middle, density[1]], sign },
+  ];
+}
+
+function cutAxial(piece: FoldedPiece, at: number): FoldedPiece[] {
+  const { start, width, density, oddDensity } = piece;
+  if (at <= start || at >= start + width) return [piece];
+  const [near, far] = [at - start, start + width - at];
+  const middle = between(density, near / width);
+  const oddMiddle = between(oddDensity, near / width);
+  return [
+    { start, width: near, density: [density[0], middle], oddDensity: [oddDensity[0], oddMiddle] },
+    { start: at, width: far, density: [middle, density[1]], oddDensity: [oddMiddle, oddDensity[1]] },
+  ];
+}
+
+function between([from, to]: readonly [number, number], fraction: number): number {
+  return from + (to - from) * fraction;
+}

@@ -7,6 +7,7 @@ import type { Config } from './config/index.ts';
 import { createApp } from './http/app.ts';
 import { approvalStore } from './storage/approvals.ts';
 import { openPostgres } from './storage/postgres.ts';
+import { registryStore } from './storage/registry.ts';
 import { openSqlite } from './storage/sqlite.ts';
 
 /** The service, wired: an unstarted server and what has to be disposed of after it. */
@@ -34,6 +35,7 @@ export async function compose(config: Config, overrides: Overrides = {}): Promis
   const database = 'postgresUrl' in store ? await openPostgres(store.postgresUrl) : await openSqlite(store.dataDir);
   const desk: ApprovalDesk = {
     store: approvalStore(database),
+    registry: registryStore(database),
     engineVersion: version,
     now: overrides.now ?? (() => new Date()),
     newId: overrides.newId ?? randomUUIDv7,

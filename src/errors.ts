@@ -17,7 +17,8 @@ export const ERROR_CATALOGUE = {
   },
   'unusable-quantity': {
     title: 'A quantity cannot exist or cannot be computed with',
-    meaning: 'The body fits the schema but its numbers contradict each other or lie outside a model. errors names the field.',
+    meaning:
+      'The body fits the schema but its numbers contradict each other or lie outside a model. errors names the field.',
   },
   'number-range': {
     title: 'The answer is outside the range of numbers',
@@ -35,6 +36,10 @@ export const ERROR_CATALOGUE = {
   conflict: {
     title: 'This contradicts what is stored',
     meaning: 'What the request would store is there already with a different content.',
+  },
+  'precondition-failed': {
+    title: 'The precondition of the request does not hold',
+    meaning: 'If-Match or If-None-Match does not fit what is stored; read it again and decide anew.',
   },
   'idempotency-conflict': {
     title: 'This Idempotency-Key was used for a different request',

@@ -4,6 +4,8 @@ import type { Duty } from './duty.ts';
 import { evaluate } from './evaluate.ts';
 import type { Part } from './part.ts';
 import { type Digests, digestOf, seal } from './record.ts';
+import { type Reference, resolveRequest } from './references.ts';
+import type { Registry } from './registry.ts';
 import type { ApprovalRequest, Evidence } from './request.ts';
 import type { ApprovalStore, Recorded } from './store.ts';
 import type { Verdict } from './verdict.ts';
@@ -19,6 +21,8 @@ export interface Approval {
   readonly uncertainty?: Readonly<Record<string, number>>;
   readonly checks: readonly CheckResult[];
   readonly cautions: readonly Caution[];
+  /** what of the request stood for something registered, and its tag then */
+  readonly references: readonly Reference[];
   readonly engine: { readonly version: string };
   readonly digests: Digests;
   readonly recordedAt: string;
@@ -27,24 +31,24 @@ export interface Approval {
 /** What approving needs from outside: a store, a version, and the two things that no pure function can have. */
 export interface ApprovalDesk {
   readonly store: ApprovalStore;
+  readonly registry: Registry;
   readonly engineVersion: string;
   readonly now: () => Date;
   readonly newId: () => string;
 }
 
-/** Evaluates a request and records the approval; resolves once the record is durable. */
-export async function approve(
-  desk: ApprovalDesk,
-  request: ApprovalRequest,
-  idempotencyKey?: string,
-): Promise<Recorded> {
-  const evaluation = evaluate(request);
-  const id = desk.newId();
-  const idempotency =
-    idempotencyKey === undefined ? undefined : { key: idempotencyKey, inputDigest: digestOf(request) };
-  return desk.store.append((previous) => {
-    const { checks, cautions, verdict, reasons } = evaluation;
-    const content = { id, verdict, reasons, ...request, checks, cautions, engine: { version: desk.engineVersion } };
-    return seal(request, { ...content, recordedAt: desk.now().toISOString() }, previous);
-  }, idempotency);
+/**
+ * Evaluates a request, with what it refers to put in its place, and records the approval; resolves once the record is durable.
+ * The input digest is of the request as it was sent.
+ */
+export async function approve(desk: ApprovalDesk, asSent: ApprovalRequest, idempotencyKey?: string): Promise<Recorded> {
+  const { request, references } = await resolveRequest(asSent, desk.registry);
+  const { verdict, reasons, checks, cautions } = evaluate(request);
+  const engine = { version: desk.engineVersion };
+  const content = { id: desk.newId(), verdict, reasons, ...request, checks, cautions, references, engine };
+  const idempotency = idempotencyKey === undefined ? undefined : { key: idempotencyKey, inputDigest: digestOf(asSent) };
+  return desk.store.append(
+    (previous) => seal(asSent, { ...content, recordedAt: desk.now().toISOString() }, previous),
+    idempotency,
+  );
 }

@@ -1,4 +1,6 @@
 import type { ApprovalRequest } from '../approval/request.ts';
+import type { Rig } from '../evidence/rig.ts';
+import type { Material } from '../physics/core/material.ts';
 
 /**
  * The wound parts of the drives that open the gates of a canal lock, with the duty of each and what a rig measured. Everything here
@@ -10,6 +12,23 @@ const BENCH = {
   inductance: { relative: 0.004, offset_H: 2e-9 },
   current: { relative: 0.002, offset_A: 0.002 },
   resistance: { relative: 0.002, offset_ohm: 2e-5 },
+};
+
+/** A power ferrite as its data sheet gives it. */
+export const GATE_DRIVE_MATERIAL: Material = {
+  initialPermeability: 2200,
+  saturation: [
+    { temperature_degC: 25, fluxDensity_T: 0.49 },
+    { temperature_degC: 100, fluxDensity_T: 0.39 },
+  ],
+  loss: { k: 8.5, alpha: 1.3, beta: 2.5 },
+};
+
+/** The works' bench as a registered rig. */
+export const GATE_DRIVE_RIG: Rig = {
+  description: 'bench 2 of the coil works',
+  instrument: BENCH,
+  calibrationDue: '2027-03-31',
 };
 
 /** Smooths the rectified supply of a gate drive. Gapped ferrite E core: must hold its inductance and energy at full current, hot. */

@@ -61,8 +61,8 @@ export function resistanceAt(
   if (resistance_ohm === undefined) return { unavailable: 'no resistance was measured' };
   const from_degC = unit.temperature_degC ?? temperature_degC;
   const scale = resistanceAtTemperature(1, from_degC, temperature_degC, conductor);
-  const relative = instrument.resistance?.relative ?? 0;
-  const offset_ohm = instrument.resistance?.offset_ohm ?? 0;
+  const relative = instrument?.resistance?.relative ?? 0;
+  const offset_ohm = instrument?.resistance?.offset_ohm ?? 0;
   return {
     value: resistance_ohm * scale,
     standardUncertainty: Math.hypot(relative * resistance_ohm, offset_ohm) * scale,
@@ -86,7 +86,7 @@ function fromSweep(
   if (current_A > characteristic.maximumCurrent_A) {
     return { unavailable: `the sweep ends at ${characteristic.maximumCurrent_A} A, before ${current_A} A` };
   }
-  const { inductance, current } = unit.instrument;
+  const { inductance, current } = unit.instrument ?? {};
   const readAs = ([
     inductanceGain = 1,
     inductanceOffset_H = 0,

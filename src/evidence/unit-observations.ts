@@ -10,7 +10,7 @@ import {
   resistanceAt,
   type Unavailable,
 } from './quantities.ts';
-import type { Unit } from './unit.ts';
+import { isOutOfCalibration, type Unit } from './unit.ts';
 import { inWords, percent } from './wording.ts';
 
 /**
@@ -92,6 +92,10 @@ export function observeUnit(
   const quantity = measure(unit);
   const common = { what: `${what} of unit ${unit.serial}`, unit: symbol, limit, serial: unit.serial };
   if ('unavailable' in quantity) return { ...common, method: NOT_MEASURED, undecided: quantity.unavailable };
+  if (isOutOfCalibration(unit)) {
+    const undecided = `the calibration of rig ${unit.rig} ended on ${unit.calibrationDue}, before the measurement of ${unit.measuredAt}`;
+    return { ...common, ...quantity, undecided };
+  }
   const colder_K = temperature_degC === undefined ? 0 : temperature_degC - (unit.temperature_degC ?? temperature_degC);
   return {
     ...common,

@@ -1,14 +1,30 @@
 import type { Sweep } from '../physics/characteristics/measured.ts';
 import type { Instrument } from './instrument.ts';
+import type { Rig } from './rig.ts';
 
-/** One measured unit as a rig sends it. */
+/** One measured unit as a rig sends it: by the id of a registered rig, or with its instrument inline. */
 export interface Unit {
   readonly serial: string;
   /** ISO 8601 with an offset. */
   readonly measuredAt: string;
-  readonly instrument: Instrument;
+  readonly rig?: string;
+  /** Absent until the rig's is put in its place. */
+  readonly instrument?: Instrument;
+  /** of the instrument; known of a registered rig */
+  readonly calibrationDue?: string;
   /** of the part while it was measured; absent: at the temperature that the drawing names */
   readonly temperature_degC?: number;
   readonly resistance_ohm?: number;
   readonly sweep: Sweep;
 }
+
+/** A unit with what its registered rig says of the instrument. */
+export const onRig = (unit: Unit, { instrument, calibrationDue }: Rig): Unit => ({
+  ...unit,
+  instrument,
+  calibrationDue,
+});
+
+/** Whether the rig's calibration had run out on the day of the measurement, by the date that the rig itself wrote. */
+export const isOutOfCalibration = ({ measuredAt, calibrationDue }: Unit): boolean =>
+  calibrationDue !== undefined && measuredAt.slice(0, 10) > calibrationDue;

@@ -10,6 +10,7 @@ import { unmatched } from './plugins/unmatched.ts';
 import { sendProblem } from './problems.ts';
 import { approvals } from './routes/approvals/index.ts';
 import { calculations } from './routes/calculations/index.ts';
+import { registry } from './routes/registry/index.ts';
 import { health } from './routes/service/health.ts';
 
 export interface AppOptions {
@@ -58,8 +59,9 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   await openapi(app, options.version);
   metrics(app);
   health(app, () => options.desk.store.ping());
-  calculations(app);
+  calculations(app, options.desk.registry);
   approvals(app, options.desk);
+  registry(app, options.desk.registry);
   app.get('/openapi.json', { schema: { hide: true } }, async () => app.swagger());
   return app;
 }

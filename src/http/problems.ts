@@ -32,6 +32,7 @@ export const STATUS: Record<ErrorCode, number> = {
   'not-found': 404,
   'method-not-allowed': 405,
   conflict: 409,
+  'precondition-failed': 412,
   'idempotency-conflict': 409,
   'too-large': 413,
   'unsupported-media-type': 415,

@@ -17,4 +17,11 @@ export interface Tables {
     /** the approval as it was answered, JSON */
     record: string;
   };
+  registry: {
+    kind: string;
+    id: string;
+    tag: string;
+    /** JSON */
+    value: string;
+  };
 }

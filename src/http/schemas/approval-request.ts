@@ -9,14 +9,8 @@ import { CoolingSchema, SweepSchema, WindingSchema } from './inductor.ts';
 import { list } from './list.ts';
 import { PathSchema } from './path.ts';
 import * as q from './quantities.ts';
+import { identifier, text } from './text.ts';
 import { UncertaintyMap } from './uncertainty.ts';
-
-const text = (longest: number) =>
-  z
-    .string()
-    .min(1)
-    .max(longest)
-    .regex(/^[^\p{Cc}]*$/u, 'must not hold control characters');
 
 const DrawingSchema = z
   .strictObject({
@@ -107,16 +101,28 @@ export const InstrumentSchema = z
       'standard uncertainties (k = 1): a gain relative to the reading and an offset, each common to all readings',
   }) satisfies z.ZodType<Instrument>;
 
+const unitFields = {
+  serial: text(100),
+  measuredAt: z.iso.datetime({ offset: true }),
+  rig: identifier.exactOptional().meta({ description: 'a registered rig, in place of an inline instrument' }),
+  instrument: InstrumentSchema.exactOptional(),
+  temperature_degC: q.temperature_degC.exactOptional(),
+  resistance_ohm: q.resistance_ohm.exactOptional(),
+  sweep: SweepSchema,
+};
+
 export const UnitSchema = z
-  .strictObject({
-    serial: text(100),
-    measuredAt: z.iso.datetime({ offset: true }),
-    instrument: InstrumentSchema,
-    temperature_degC: q.temperature_degC.exactOptional(),
-    resistance_ohm: q.resistance_ohm.exactOptional(),
-    sweep: SweepSchema,
+  .strictObject(unitFields)
+  .refine(({ rig, instrument }) => (rig === undefined) !== (instrument === undefined), {
+    message: 'a unit has a registered rig or an inline instrument, one of the two',
+    path: ['rig'],
   })
   .meta({ id: 'Unit', description: 'one measured unit' }) satisfies z.ZodType<Unit>;
+
+/** A unit as an approval records it: with what was registered of its rig. */
+export const RecordedUnitSchema = z
+  .object({ ...unitFields, calibrationDue: z.string().exactOptional() })
+  .meta({ id: 'RecordedUnit' });
 
 export const ApprovalRequestSchema = z.strictObject({
   part: PartSchema,

@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import type { Approval } from '../../approval/approval.ts';
 import { CHECK_NAMES } from '../../approval/check.ts';
-import { DutySchema, PartSchema, UnitSchema } from './approval-request.ts';
+import { DutySchema, PartSchema, RecordedUnitSchema } from './approval-request.ts';
 import { list } from './list.ts';
 import { CautionSchema, MethodSchema } from './method.ts';
 import { UncertaintyMap } from './uncertainty.ts';
@@ -54,10 +54,16 @@ export const ApprovalSchema = z
     reasons: list(z.string()),
     part: PartSchema,
     duty: DutySchema,
-    evidence: z.object({ units: list(UnitSchema).exactOptional() }).exactOptional(),
+    evidence: z.object({ units: list(RecordedUnitSchema).exactOptional() }).exactOptional(),
     uncertainty: UncertaintyMap.exactOptional(),
     checks: list(CheckSchema),
     cautions: list(CautionSchema),
+    references: list(
+      z.object({ pointer: z.string(), kind: z.enum(['material', 'part', 'rig']), id: z.string(), tag: z.string() }),
+    ).meta({
+      description:
+        'what of the request stood for something registered, and its entity tag then; the record holds what it stood for',
+    }),
     engine: z.object({ version: z.string() }),
     digests: z.object({ input: z.string(), record: z.string(), previous: z.string().nullable() }).meta({
       description: 'SHA-256 over canonical JSON (RFC 8785); previous is the record digest of the approval before',

@@ -10,6 +10,7 @@ import {
   relativePermeability,
   temperature_degC,
 } from './quantities.ts';
+import { identifier } from './text.ts';
 
 /** Entries of a table or list of a material: more than any data sheet prints. */
 const MAXIMUM_ENTRIES = 1000;
@@ -22,7 +23,7 @@ export const SteinmetzLossSchema = z
   })
   .meta({ id: 'SteinmetzLoss', description: 'P = k f^alpha B^beta in W/m³, f in Hz, B in T (peak)' });
 
-export const MaterialSchema = z
+export const InlineMaterialSchema = z
   .strictObject({
     initialPermeability: relativePermeability,
     saturation: z
@@ -48,6 +49,14 @@ export const MaterialSchema = z
     loss: SteinmetzLossSchema.exactOptional(),
   })
   .meta({ id: 'Material', description: 'soft magnetic material' }) satisfies z.ZodType<Material>;
+
+/**
+ * A material, or the id of a registered one. The type says a material alone: ids are resolved before anything else sees the body
+ * (approval/references.ts).
+ */
+export const MaterialSchema = z
+  .union([InlineMaterialSchema, identifier])
+  .meta({ description: 'inline, or the id of a registered material' }) as unknown as z.ZodType<Material>;
 
 const GapSchema = z
   .strictObject({

@@ -2,7 +2,6 @@ import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
 import { z } from 'zod';
 import { type ApprovalDesk, approve } from '../../../approval/approval.ts';
-import { CoilproofError } from '../../../errors.ts';
 import { BODY_PROBLEMS, operation } from '../../operation.ts';
 import { ApprovalSchema } from '../../schemas/approval.ts';
 import { ApprovalRequestSchema } from '../../schemas/approval-request.ts';
@@ -33,11 +32,6 @@ export function createApproval(app: FastifyInstance, desk: ApprovalDesk): void {
       },
     },
     async (request, reply) => {
-      const { part } = request.body;
-      if (!part.drawing && !part.construction) {
-        const detail = `No part ${part.number} revision ${part.revision} is stored here; send its drawing and construction.`;
-        throw new CoilproofError('unknown-reference', detail, [{ pointer: '/part', detail }]);
-      }
       const { approval } = await approve(desk, request.body, request.headers['idempotency-key']);
       return reply.code(201).header('location', `/v1/approvals/${approval.id}`).send(approval);
     },

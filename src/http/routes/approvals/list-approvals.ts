@@ -2,7 +2,7 @@ import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
 import { z } from 'zod';
 import type { ApprovalDesk } from '../../../approval/approval.ts';
-import { packCursor, unpackCursor } from '../../cursor.ts';
+import { packCursor, unpackPosition } from '../../cursor.ts';
 import { operation } from '../../operation.ts';
 import { ApprovalSchema, VerdictSchema } from '../../schemas/approval.ts';
 import { list } from '../../schemas/list.ts';
@@ -53,14 +53,14 @@ export function listApprovals(app: FastifyInstance, { store }: ApprovalDesk): vo
       const { after, limit, ...filter } = request.query;
       const found = await store.list({
         ...filter,
-        ...(after !== undefined && { after: unpackCursor(after) }),
+        ...(after !== undefined && { after: unpackPosition(after) }),
         limit: limit + 1,
       });
       const page = found.slice(0, limit);
       const last = page.at(-1);
       return {
         approvals: page.map(({ approval }) => approval),
-        after: found.length > limit && last ? packCursor(last.position) : null,
+        after: found.length > limit && last ? packCursor(String(last.position)) : null,
       };
     },
   );

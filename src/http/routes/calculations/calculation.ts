@@ -2,6 +2,8 @@ import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
 import type { z } from 'zod';
 import { cautionsOf, type Hazards } from '../../../approval/cautions.ts';
+import { resolveMaterials } from '../../../approval/references.ts';
+import type { Registry } from '../../../approval/registry.ts';
 import { propagateOverRecord } from '../../../metrology/propagation.ts';
 import type { Calculation } from '../../../physics/calculations/calculation.ts';
 import { BODY_PROBLEMS, operation } from '../../operation.ts';
@@ -24,6 +26,7 @@ interface Description<Request extends UncertaintyFields, Answer extends object> 
 /** Registers one calculation: nothing stored, uncertainty of any number in the request propagated, cautions added. */
 export function calculation<Request extends UncertaintyFields, Answer extends object>(
   app: FastifyInstance,
+  registry: Registry,
   c: Description<Request, Answer>,
 ): void {
   const Response = c.answer.extend({ uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) });
@@ -37,13 +40,14 @@ export function calculation<Request extends UncertaintyFields, Answer extends ob
           tag: 'calculation',
           scope: 'calculate',
           success: { 200: Response },
-          problems: BODY_PROBLEMS,
+          problems: [...BODY_PROBLEMS, 'unknown-reference'],
         }),
         body: c.request.meta({ examples: c.examples as unknown[] }),
       },
     },
     async (request, reply) => {
-      const { uncertainty, ...input } = request.body as Request;
+      const { uncertainty, ...asSent } = request.body as Request;
+      const { body: input } = await resolveMaterials(asSent, registry);
       const answer = c.calculation.calculate(input as Request);
       return reply.send({
         ...answer,

@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { energyDensity } from '../../../physics/calculations/energy-density.ts';
 import { MaterialSchema } from '../../schemas/core.ts';
 import { MethodSchema } from '../../schemas/method.ts';
@@ -8,8 +9,8 @@ import { uncertaintyFields } from '../../schemas/uncertainty.ts';
 import { calculation } from './calculation.ts';
 
 /** POST /v1/energy-density */
-export const energyDensityRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const energyDensityRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/energy-density',
     operationId: 'calculateEnergyDensity',
     summary: 'Energy density and pressure of a magnetic field',

@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { energy } from '../../../physics/calculations/energy.ts';
 import { InductorSchema } from '../../schemas/inductor.ts';
 import { MethodSchema } from '../../schemas/method.ts';
@@ -8,8 +9,8 @@ import { uncertaintyFields } from '../../schemas/uncertainty.ts';
 import { calculation } from './calculation.ts';
 
 /** POST /v1/energy */
-export const energyRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const energyRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/energy',
     operationId: 'calculateEnergy',
     summary: 'Energy that an inductor stores at a current, saturating or not',

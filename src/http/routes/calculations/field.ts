@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { field } from '../../../physics/calculations/field.ts';
 import { Multilayer, RoundLoop, Solenoid } from '../../schemas/coils.ts';
 import { list } from '../../schemas/list.ts';
@@ -12,8 +13,8 @@ import { calculation } from './calculation.ts';
 const MAXIMUM_POINTS = 1000;
 
 /** POST /v1/field */
-export const fieldRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const fieldRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/field',
     operationId: 'calculateField',
     summary: 'Flux density of a coil at points, and where it falls to a limit',

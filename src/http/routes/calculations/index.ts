@@ -1,4 +1,5 @@
 import type { FastifyInstance } from 'fastify';
+import type { Registry } from '../../../approval/registry.ts';
 import { conformityRoute } from './conformity.ts';
 import { energyRoute } from './energy.ts';
 import { energyDensityRoute } from './energy-density.ts';
@@ -10,14 +11,14 @@ import { saturationRoute } from './saturation.ts';
 import { transientRoute } from './transient.ts';
 
 /** The calculations of /v1: nothing stored. */
-export function calculations(app: FastifyInstance): void {
-  inductanceRoute(app);
-  mutualInductanceRoute(app);
-  energyRoute(app);
-  energyDensityRoute(app);
-  saturationRoute(app);
-  fieldRoute(app);
-  transientRoute(app);
-  lossesRoute(app);
+export function calculations(app: FastifyInstance, registry: Registry): void {
+  inductanceRoute(app, registry);
+  mutualInductanceRoute(app, registry);
+  energyRoute(app, registry);
+  energyDensityRoute(app, registry);
+  saturationRoute(app, registry);
+  fieldRoute(app, registry);
+  transientRoute(app, registry);
+  lossesRoute(app, registry);
   conformityRoute(app);
 }

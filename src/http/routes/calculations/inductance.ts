@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { inductance } from '../../../physics/calculations/inductance.ts';
 import { CoilSchema } from '../../schemas/coils.ts';
 import { WindingSchema } from '../../schemas/inductor.ts';
@@ -9,8 +10,8 @@ import { uncertaintyFields } from '../../schemas/uncertainty.ts';
 import { calculation } from './calculation.ts';
 
 /** POST /v1/inductance */
-export const inductanceRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const inductanceRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/inductance',
     operationId: 'calculateInductance',
     summary: 'Inductance of a construction, and what it stores at a current',

@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { losses } from '../../../physics/calculations/losses.ts';
 import { SteinmetzLossSchema } from '../../schemas/core.ts';
 import { CoolingSchema, WindingSchema } from '../../schemas/inductor.ts';
@@ -15,8 +16,8 @@ const MAXIMUM_POINTS = 10_000;
 const fluxDensity_T = z.number().min(-100).max(100);
 
 /** POST /v1/losses */
-export const lossesRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const lossesRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/losses',
     operationId: 'calculateLosses',
     summary: 'Losses of winding and core, and the temperature rise that they lead to',

@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { saturation } from '../../../physics/calculations/saturation.ts';
 import { Cored } from '../../schemas/coils.ts';
 import { MethodSchema } from '../../schemas/method.ts';
@@ -8,8 +9,8 @@ import { uncertaintyFields } from '../../schemas/uncertainty.ts';
 import { calculation } from './calculation.ts';
 
 /** POST /v1/saturation */
-export const saturationRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const saturationRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/saturation',
     operationId: 'calculateSaturation',
     summary: 'Where a cored coil saturates, and the energy it holds there',

@@ -1,5 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
+import type { Registry } from '../../../approval/registry.ts';
 import { transient } from '../../../physics/calculations/transient.ts';
 import { InductorSchema } from '../../schemas/inductor.ts';
 import { list } from '../../schemas/list.ts';
@@ -26,8 +27,8 @@ const anyEvent = {
 };
 
 /** POST /v1/transient */
-export const transientRoute = (app: FastifyInstance) =>
-  calculation(app, {
+export const transientRoute = (app: FastifyInstance, registry: Registry) =>
+  calculation(app, registry, {
     path: '/v1/transient',
     operationId: 'calculateTransient',
     summary: 'Turn-on and turn-off of an inductor: voltage, time, and where the energy goes',

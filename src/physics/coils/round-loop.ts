@@ -37,7 +37,7 @@ function loopMethod(diameter_m: number, wireDiameter_m: number, turns: number): 
     name: 'ring of round section, uniform current density',
     references: [
       'E. B. Rosa and F. W. Grover, NBS Scientific Paper 169 (1916)',
-      'V. A. Fock, Physikalische Zeitschrift der Sowjetunion 1 (1932) 215 (toroidal harmonics)',
+      'NIST Digital Library of Mathematical Functions, 14.19 (toroidal functions)',
     ],
     relativeError: section + bundling,
     validity:

@@ -60,18 +60,20 @@ function helixError({ turns, diameter_m, length_m }: Solenoid, inductance_H: num
 }
 
 /**
- * The sheet against round wire: −µ0 a N (G + H), with G = 5/4 − ln(2 pitch/wire) and 0 ≤ H < 0.337 (Rosa and Grover,
- * NBS Scientific Paper 169, from memory); below 0.9 in magnitude for a pitch of one to four wire diameters.
+ * The sheet against round wire: −µ0 a N (G + H), with G = 5/4 − ln(2 pitch/wire) and 0 ≤ H < 0.338 (Rosa and Grover,
+ * NBS Scientific Paper 169, from memory); below 0.9 in magnitude for a pitch of one to four wire diameters. And the direct
+ * current's own distribution over the wire (see `ringsMethod`), which is at most as thick as the pitch.
  */
 function sheetMethod(coil: Solenoid, inductance_H: number): Method {
   const wire = (0.9 * VACUUM_PERMEABILITY_H_PER_M * coil.turns * coil.diameter_m) / 2 / inductance_H;
+  const thickest = Math.min(1, coil.length_m / coil.turns / coil.diameter_m);
   return {
     name: 'cylindrical current sheet',
     references: [
       'L. Lorenz, Annalen der Physik 243 (1879) 161',
       'H. Nagaoka, The inductance coefficients of solenoids, J. Coll. Sci. Tokyo 27(6) (1909)',
     ],
-    relativeError: wire + helixError(coil, inductance_H),
+    relativeError: wire + 0.75 * thickest ** 2 + helixError(coil, inductance_H),
     validity:
       'single layer, air, low frequency; the error covers round wire at a pitch of one to four wire diameters, give the wire diameter to resolve it',
   };
@@ -79,7 +81,8 @@ function sheetMethod(coil: Solenoid, inductance_H: number): Method {
 
 /**
  * 0.75 ε²: uniform current density against the direct current's, which falls as 1/r across a bent wire, and 3e-3 ε⁴: the
- * equivalent filaments that the rings are summed by; ε = wire/coil diameter. Both read off quadrature over the sections.
+ * equivalent filaments that the rings are summed by; ε = wire/coil diameter. Both read off quadrature over the sections
+ * (test/fixtures/scipy/rings.py).
  */
 function ringsMethod(coil: Solenoid, wireDiameter_m: number, inductance_H: number): Method {
   const ratio = wireDiameter_m / coil.diameter_m;

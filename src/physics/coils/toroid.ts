@@ -69,7 +69,7 @@ function geometricFactor_m(coil: Toroid): number {
  * What a winding of wire has and the sheet has not, in air whatever the filling, relative to the inductance:
  *
  * - each turn is a wire and not a strip of sheet, µ0 P N/2π (G + H) as for a solenoid, P its perimeter, G = 5/4 − ln(2 pitch/wire),
- *   0 ≤ H < 0.337, with the logarithm of the pitch averaged along the turn, because the pitch widens from the hole outwards;
+ *   0 ≤ H < 0.338, with the logarithm of the pitch averaged along the turn, because the pitch widens from the hole outwards;
  * - the winding also goes once round the axis: at most µ0 R (ln(8R/b) − 3/2), b the radius of a circle within the section.
  */
 function sheetMethod(coil: Toroid, inductance_H: number): Method {

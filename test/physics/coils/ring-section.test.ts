@@ -5,6 +5,7 @@ import {
   roundRingSelfInductance_H,
 } from '../../../src/physics/coils/ring-section.ts';
 import { VACUUM_PERMEABILITY_H_PER_M } from '../../../src/physics/constants.ts';
+import series from '../../fixtures/mpmath/ring-series.json' with { type: 'json' };
 import harmonics from '../../fixtures/mpmath/round-loop.json' with { type: 'json' };
 import rings from '../../fixtures/scipy/rings.json' with { type: 'json' };
 import quadrature from '../../fixtures/scipy/round-loop-quadrature.json' with { type: 'json' };
@@ -21,6 +22,20 @@ describe('ring of round section, self-inductance', () => {
   it('agrees with quadrature over both sections of Maxwell’s formula', () => {
     for (const [ratio, expected] of quadrature as [number, number, number][]) {
       expect(Math.abs(selfOverRadius(ratio) / expected - 1), `ratio ${ratio}`).toBeLessThan(2e-10);
+    }
+  });
+
+  it('rests on a recurrence that sixty coefficients follow exactly', () => {
+    const coefficients = series as [string, number][];
+    expect(coefficients.length).toBe(61);
+    const common = BigInt(Math.max(...coefficients.map(([, exponent]) => exponent)));
+    const a = coefficients.map(([numerator, exponent]) => BigInt(numerator) << (common - BigInt(exponent)));
+    for (let n = 1n; n < 61n; n++) {
+      const f = 4n * n * n * (n + 1n) * (n + 2n);
+      const g = (2n * n - 3n) * (2n * n - 1n) * (2n * n * n - 2n * n - 3n);
+      const h = (n - 3n) * (n - 2n) * (2n * n - 5n) * (2n * n - 3n);
+      const older = n > 1n ? a[Number(n) - 2]! : 0n;
+      expect(f * a[Number(n)]!).toBe(g * a[Number(n) - 1]! - h * older);
     }
   });
 
@@ -41,7 +56,7 @@ describe('ring of round section, self-inductance', () => {
 
 describe('two equal rings, mutual inductance', () => {
   // Rows of two turns hold it: L = 2 M₀ + 2 M.
-  const pairs = (rings as [number, number, number, number][]).filter(([turns]) => turns === 2);
+  const pairs = (rings as [number, number, number, number, number][]).filter(([turns]) => turns === 2);
   it.each([
     [0.95, 2.5e-3],
     [1 / 1.5, 6e-4],

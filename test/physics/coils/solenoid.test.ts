@@ -26,7 +26,7 @@ describe('solenoid of round wire', () => {
   it('is within 5e-4 of the ring sum, 1 to 1000 turns, coil/wire from 3 up, pitch/wire 1 to 10', () => {
     let worst = 0;
     let count = 0;
-    for (const [turns, pitch, ratio, expected] of rings as [number, number, number, number][]) {
+    for (const [turns, pitch, ratio, expected] of rings as [number, number, number, number, number][]) {
       if (ratio > 0.34) continue;
       count++;
       const { inductance_H } = solenoidInductance(solenoid(turns, 2, turns * pitch, 2 * ratio));
@@ -43,6 +43,13 @@ describe('solenoid of round wire', () => {
       expect(relativeError, `${turns} turns, pitch ${pitch}, wire ${ratio}`).toBeGreaterThan(Math.abs(difference));
       // Where the helix matters most it is most of the error.
       if (turns >= 30 && pitch > 0.1) expect(relativeError).toBeLessThan(4 * Math.abs(difference));
+    }
+  });
+
+  it('states an error that covers a direct current’s own distribution, 1/r', () => {
+    for (const [turns, pitch, ratio, uniform, direct] of rings as [number, number, number, number, number][]) {
+      const { relativeError } = solenoidInductance(solenoid(turns, 2, turns * pitch, 2 * ratio)).method;
+      expect(relativeError, `${turns} turns, pitch ${pitch}, wire ${ratio}`).toBeGreaterThan(1 - direct / uniform);
     }
   });
 
@@ -69,7 +76,7 @@ describe('solenoid of round wire', () => {
 
 describe('solenoid as a current sheet', () => {
   it('states an error that covers round wire at a pitch of one to four wire diameters', () => {
-    for (const [turns, pitch, ratio] of rings as [number, number, number, number][]) {
+    for (const [turns, pitch, ratio] of rings as [number, number, number, number, number][]) {
       if (ratio > 0.34 || pitch / ratio > 7) continue;
       const sheet = solenoidInductance(solenoid(turns, 2, turns * pitch));
       const wire = solenoidInductance(solenoid(turns, 2, turns * pitch, 2 * ratio));

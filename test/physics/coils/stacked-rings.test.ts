@@ -9,7 +9,7 @@ import { stackedRingsInductance_H } from '../../../src/physics/coils/stacked-rin
 import { VACUUM_PERMEABILITY_H_PER_M } from '../../../src/physics/constants.ts';
 import reference from '../../fixtures/scipy/rings.json' with { type: 'json' };
 
-const rows = reference as [number, number, number, number][];
+const rows = reference as [number, number, number, number, number][];
 const worstError = (wireRatio: number) =>
   Math.max(
     ...rows

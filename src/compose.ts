@@ -9,6 +9,7 @@ import { approvalStore } from './storage/approvals.ts';
 import { openPostgres } from './storage/postgres.ts';
 import { registryStore } from './storage/registry.ts';
 import { openSqlite } from './storage/sqlite.ts';
+import { createSimulator } from './workers/simulation.ts';
 
 /** The service, wired: an unstarted server and what has to be disposed of after it. */
 export interface Service {
@@ -40,12 +41,14 @@ export async function compose(config: Config, overrides: Overrides = {}): Promis
     now: overrides.now ?? (() => new Date()),
     newId: overrides.newId ?? randomUUIDv7,
   };
-  const app = await createApp({ version, logger, limits: config.limits, desk });
+  const simulator = createSimulator();
+  const app = await createApp({ version, logger, limits: config.limits, desk, simulator });
   return {
     app,
     desk,
     dispose: async () => {
       await app.close();
+      await simulator.close();
       await database.close();
     },
   };

@@ -1,6 +1,7 @@
 import { type Judgement, judge, mostAdverse } from '../evidence/judge.ts';
 import type { Observation } from '../evidence/observation.ts';
 import { propagateOverRecord } from '../metrology/propagation.ts';
+import { exclusiveMinimum } from '../physics/calculations/index.ts';
 import type { Caution } from './cautions.ts';
 import type { Check } from './check.ts';
 import type { CheckResult } from './check-result.ts';
@@ -65,15 +66,20 @@ function requestUncertainties(check: Check, request: ApprovalRequest, observatio
   const { uncertainty } = request;
   const sides = observations.map(nearestSide);
   if (!uncertainty || sides.every((side) => side === undefined)) return {};
-  return propagateOverRecord(request, uncertainty, (candidate) => {
-    const again = check.observe(candidate);
-    return Object.fromEntries(
-      sides.flatMap((side, index) => {
-        const { value, limit } = again[index] ?? {};
-        return side === undefined || value === undefined ? [] : [[String(index), value - (limit?.[side] ?? 0)]];
-      }),
-    );
-  });
+  return propagateOverRecord(
+    request,
+    uncertainty,
+    (candidate) => {
+      const again = check.observe(candidate);
+      return Object.fromEntries(
+        sides.flatMap((side, index) => {
+          const { value, limit } = again[index] ?? {};
+          return side === undefined || value === undefined ? [] : [[String(index), value - (limit?.[side] ?? 0)]];
+        }),
+      );
+    },
+    exclusiveMinimum,
+  );
 }
 
 function nearestSide({ value, limit: { lower, upper } }: Observation): 'lower' | 'upper' | undefined {

@@ -3,6 +3,7 @@ import underPressure from '@fastify/under-pressure';
 import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastify';
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
+import type { Simulator } from '../workers/simulation.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
@@ -18,6 +19,7 @@ export interface AppOptions {
   readonly logger: NonNullable<FastifyServerOptions['loggerInstance']>;
   readonly limits: { readonly bodyBytes: number; readonly requestTimeout_ms: number };
   readonly desk: ApprovalDesk;
+  readonly simulator: Simulator;
 }
 
 const REQUEST_ID = /^[\w.-]{1,64}$/;
@@ -59,7 +61,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   await openapi(app, options.version);
   metrics(app);
   health(app, () => options.desk.store.ping());
-  calculations(app, options.desk.registry);
+  calculations(app, { registry: options.desk.registry, simulator: options.simulator });
   approvals(app, options.desk);
   registry(app, options.desk.registry);
   app.get('/openapi.json', { schema: { hide: true } }, async () => app.swagger());

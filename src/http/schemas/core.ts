@@ -56,7 +56,7 @@ export const InlineMaterialSchema = z
  */
 export const MaterialSchema = z
   .union([InlineMaterialSchema, identifier])
-  .meta({ description: 'inline, or the id of a registered material' }) as unknown as z.ZodType<Material>;
+  .meta({ description: 'inline, or the id of a registered material' }) as unknown as z.ZodType<Material, Material>;
 
 const GapSchema = z
   .strictObject({

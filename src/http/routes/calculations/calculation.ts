@@ -6,10 +6,18 @@ import { resolveMaterials } from '../../../approval/references.ts';
 import type { Registry } from '../../../approval/registry.ts';
 import { propagateOverRecord } from '../../../metrology/propagation.ts';
 import type { Calculation } from '../../../physics/calculations/calculation.ts';
+import { type CalculationName, exclusiveMinimum } from '../../../physics/calculations/index.ts';
+import type { Simulation, Simulator } from '../../../workers/simulation.ts';
 import { BODY_PROBLEMS, operation } from '../../operation.ts';
 import { list } from '../../schemas/list.ts';
 import { CautionSchema } from '../../schemas/method.ts';
 import { type UncertaintyFields, UncertaintySchema } from '../../schemas/uncertainty.ts';
+
+/** What calculations need from outside. */
+export interface CalculationPorts {
+  readonly registry: Registry;
+  readonly simulator: Simulator;
+}
 
 interface Description<Request extends UncertaintyFields, Answer extends object> {
   readonly path: string;
@@ -19,6 +27,7 @@ interface Description<Request extends UncertaintyFields, Answer extends object> 
   readonly request: z.ZodType<Request>;
   readonly answer: z.ZodObject & z.ZodType<unknown, Answer>;
   readonly examples: readonly NoInfer<Request>[];
+  readonly name: CalculationName;
   readonly calculation: Calculation<NoInfer<Request>, NoInfer<Answer>>;
   readonly hazards?: (request: NoInfer<Request>, answer: NoInfer<Answer>) => Hazards;
 }
@@ -26,7 +35,7 @@ interface Description<Request extends UncertaintyFields, Answer extends object> 
 /** Registers one calculation: nothing stored, uncertainty of any number in the request propagated, cautions added. */
 export function calculation<Request extends UncertaintyFields, Answer extends object>(
   app: FastifyInstance,
-  registry: Registry,
+  { registry, simulator }: CalculationPorts,
   c: Description<Request, Answer>,
 ): void {
   const Response = c.answer.extend({ uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) });
@@ -46,16 +55,29 @@ export function calculation<Request extends UncertaintyFields, Answer extends ob
       },
     },
     async (request, reply) => {
-      const { uncertainty, ...asSent } = request.body as Request;
-      const { body: input } = await resolveMaterials(asSent, registry);
-      const answer = c.calculation.calculate(input as Request);
+      const { uncertainty, method, trials, seed, coverage, ...asSent } = request.body as Request;
+      const { body: input } = await resolveMaterials(asSent as unknown as Request, registry);
+      const answer = c.calculation.calculate(input);
+      const options = { trials: trials ?? DEFAULT_TRIALS, seed: seed ?? 1, coverage: coverage ?? 0.95 };
       return reply.send({
         ...answer,
-        ...(uncertainty && { uncertainty: firstOrder(c.calculation, input as Request, uncertainty) }),
-        cautions: cautionsOf(c.hazards?.(input as Request, answer) ?? {}),
+        ...(uncertainty && {
+          uncertainty:
+            method === 'monte-carlo'
+              ? await simulated(simulator, { calculation: c.name, request: input, uncertainty, options })
+              : firstOrder(c.calculation, input, uncertainty),
+        }),
+        cautions: cautionsOf(c.hazards?.(input, answer) ?? {}),
       } as never);
     },
   );
+}
+
+/** Enough for two significant digits of a standard uncertainty and of a 95 % interval (JCGM 101, 7.2.3). */
+const DEFAULT_TRIALS = 100_000;
+
+async function simulated(simulator: Simulator, simulation: Simulation) {
+  return { method: 'monte-carlo' as const, ...(await simulator.simulate(simulation)) };
 }
 
 function firstOrder<Request, Answer>(
@@ -63,8 +85,11 @@ function firstOrder<Request, Answer>(
   request: Request,
   uncertainty: Readonly<Record<string, number>>,
 ) {
-  const outputs = propagateOverRecord(request as object, uncertainty, (record) =>
-    mainOutputs(calculate(record as Request)),
+  const outputs = propagateOverRecord(
+    request as object,
+    uncertainty,
+    (record) => mainOutputs(calculate(record as Request)),
+    exclusiveMinimum,
   );
   return {
     method: 'first-order' as const,

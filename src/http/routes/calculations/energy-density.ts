@@ -1,16 +1,16 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { energyDensity } from '../../../physics/calculations/energy-density.ts';
 import { MaterialSchema } from '../../schemas/core.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { relativePermeability, temperature_degC, volume_m3 } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** POST /v1/energy-density */
-export const energyDensityRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const energyDensityRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'energy-density',
     path: '/v1/energy-density',
     operationId: 'calculateEnergyDensity',
     summary: 'Energy density and pressure of a magnetic field',

@@ -1,16 +1,16 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { energy } from '../../../physics/calculations/energy.ts';
 import { InductorSchema } from '../../schemas/inductor.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { current_A, temperature_degC } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** POST /v1/energy */
-export const energyRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const energyRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'energy',
     path: '/v1/energy',
     operationId: 'calculateEnergy',
     summary: 'Energy that an inductor stores at a current, saturating or not',

@@ -1,20 +1,20 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { field } from '../../../physics/calculations/field.ts';
 import { Multilayer, RoundLoop, Solenoid } from '../../schemas/coils.ts';
 import { list } from '../../schemas/list.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { current_A, fluxDensity_T } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** Points in one request: a plot's worth. */
 const MAXIMUM_POINTS = 1000;
 
 /** POST /v1/field */
-export const fieldRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const fieldRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'field',
     path: '/v1/field',
     operationId: 'calculateField',
     summary: 'Flux density of a coil at points, and where it falls to a limit',

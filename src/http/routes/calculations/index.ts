@@ -1,5 +1,5 @@
 import type { FastifyInstance } from 'fastify';
-import type { Registry } from '../../../approval/registry.ts';
+import type { CalculationPorts } from './calculation.ts';
 import { conformityRoute } from './conformity.ts';
 import { energyRoute } from './energy.ts';
 import { energyDensityRoute } from './energy-density.ts';
@@ -11,14 +11,14 @@ import { saturationRoute } from './saturation.ts';
 import { transientRoute } from './transient.ts';
 
 /** The calculations of /v1: nothing stored. */
-export function calculations(app: FastifyInstance, registry: Registry): void {
-  inductanceRoute(app, registry);
-  mutualInductanceRoute(app, registry);
-  energyRoute(app, registry);
-  energyDensityRoute(app, registry);
-  saturationRoute(app, registry);
-  fieldRoute(app, registry);
-  transientRoute(app, registry);
-  lossesRoute(app, registry);
+export function calculations(app: FastifyInstance, ports: CalculationPorts): void {
+  inductanceRoute(app, ports);
+  mutualInductanceRoute(app, ports);
+  energyRoute(app, ports);
+  energyDensityRoute(app, ports);
+  saturationRoute(app, ports);
+  fieldRoute(app, ports);
+  transientRoute(app, ports);
+  lossesRoute(app, ports);
   conformityRoute(app);
 }

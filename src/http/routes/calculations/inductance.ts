@@ -1,17 +1,17 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { inductance } from '../../../physics/calculations/inductance.ts';
 import { CoilSchema } from '../../schemas/coils.ts';
 import { WindingSchema } from '../../schemas/inductor.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { current_A, temperature_degC } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** POST /v1/inductance */
-export const inductanceRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const inductanceRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'inductance',
     path: '/v1/inductance',
     operationId: 'calculateInductance',
     summary: 'Inductance of a construction, and what it stores at a current',

@@ -1,6 +1,5 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { losses } from '../../../physics/calculations/losses.ts';
 import { SteinmetzLossSchema } from '../../schemas/core.ts';
 import { CoolingSchema, WindingSchema } from '../../schemas/inductor.ts';
@@ -8,7 +7,7 @@ import { list } from '../../schemas/list.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { frequency_Hz, positiveCurrent_A, temperature_degC, volume_m3 } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** Harmonics, or points of a flux waveform, in one request. */
 const MAXIMUM_POINTS = 10_000;
@@ -16,8 +15,9 @@ const MAXIMUM_POINTS = 10_000;
 const fluxDensity_T = z.number().min(-100).max(100);
 
 /** POST /v1/losses */
-export const lossesRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const lossesRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'losses',
     path: '/v1/losses',
     operationId: 'calculateLosses',
     summary: 'Losses of winding and core, and the temperature rise that they lead to',

@@ -1,16 +1,16 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { saturation } from '../../../physics/calculations/saturation.ts';
 import { Cored } from '../../schemas/coils.ts';
 import { MethodSchema } from '../../schemas/method.ts';
 import { current_A, fraction, temperature_degC } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 /** POST /v1/saturation */
-export const saturationRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const saturationRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'saturation',
     path: '/v1/saturation',
     operationId: 'calculateSaturation',
     summary: 'Where a cored coil saturates, and the energy it holds there',

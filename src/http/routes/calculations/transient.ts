@@ -1,6 +1,5 @@
 import type { FastifyInstance } from 'fastify';
 import { z } from 'zod';
-import type { Registry } from '../../../approval/registry.ts';
 import { transient } from '../../../physics/calculations/transient.ts';
 import { InductorSchema } from '../../schemas/inductor.ts';
 import { list } from '../../schemas/list.ts';
@@ -14,7 +13,7 @@ import {
   voltage_V,
 } from '../../schemas/quantities.ts';
 import { uncertaintyFields } from '../../schemas/uncertainty.ts';
-import { calculation } from './calculation.ts';
+import { type CalculationPorts, calculation } from './calculation.ts';
 
 const anyEvent = {
   ...uncertaintyFields,
@@ -27,8 +26,9 @@ const anyEvent = {
 };
 
 /** POST /v1/transient */
-export const transientRoute = (app: FastifyInstance, registry: Registry) =>
-  calculation(app, registry, {
+export const transientRoute = (app: FastifyInstance, ports: CalculationPorts) =>
+  calculation(app, ports, {
+    name: 'transient',
     path: '/v1/transient',
     operationId: 'calculateTransient',
     summary: 'Turn-on and turn-off of an inductor: voltage, time, and where the energy goes',

@@ -73,15 +73,23 @@ function multilayerMethod(coil: Multilayer, inductance_H: number): Method {
  */
 function windingError(coil: Multilayer, inductance_H: number): number {
   const { turns, innerDiameter_m, outerDiameter_m, length_m } = coil;
-  const build = (outerDiameter_m - innerDiameter_m) / 2;
   const meanDiameter = (outerDiameter_m + innerDiameter_m) / 2;
-  const cells = Math.max(1, turns);
-  const squareSide = (Math.sqrt(build) * Math.sqrt(length_m)) / Math.sqrt(cells);
-  const thin = Math.min(build, length_m, squareSide);
-  const oneRow = squareSide > thin;
-  const sides = oneRow ? 1 + Math.max(build, length_m) / cells / thin : 2;
-  const cell = Math.log((0.2235 / 0.3894) * 2 * sides) + (oneRow ? 0.338 : 0.017);
+  const { thin_m, wide_m } = turnCell(coil);
+  const oneRow = wide_m > thin_m;
+  const cell = Math.log((0.2235 / 0.3894) * 2 * (1 + wide_m / thin_m)) + (oneRow ? 0.338 : 0.017);
   const perTurn = (VACUUM_PERMEABILITY_H_PER_M * meanDiameter) / 2;
   const axial = ((VACUUM_PERMEABILITY_H_PER_M * length_m) / (2 * Math.PI)) * Math.asinh(length_m / (meanDiameter / 2));
-  return (perTurn * cell * turns + axial) / inductance_H + 0.75 * Math.min(1, thin / meanDiameter) ** 2;
+  return (perTurn * cell * turns + axial) / inductance_H + 0.75 * Math.min(1, thin_m / meanDiameter) ** 2;
+}
+
+/** The part of the section that one turn has: a square, or, where only one row of them fits, a rectangle. */
+export function turnCell({ turns, innerDiameter_m, outerDiameter_m, length_m }: Multilayer): {
+  thin_m: number;
+  wide_m: number;
+} {
+  const build = (outerDiameter_m - innerDiameter_m) / 2;
+  const cells = Math.max(1, turns);
+  const side = (Math.sqrt(build) * Math.sqrt(length_m)) / Math.sqrt(cells);
+  const thin_m = Math.min(build, length_m);
+  return side <= thin_m ? { thin_m: side, wide_m: side } : { thin_m, wide_m: Math.max(build, length_m) / cells };
 }

@@ -5,7 +5,11 @@ import { CoilproofError } from '../errors.ts';
 export interface Config {
   readonly listen: { readonly host: string; readonly port: number };
   readonly store: { readonly dataDir: string } | { readonly postgresUrl: string };
-  readonly limits: { readonly bodyBytes: number; readonly requestTimeout_ms: number };
+  readonly limits: {
+    readonly bodyBytes: number;
+    readonly requestTimeout_ms: number;
+    readonly requestsInFlight: number;
+  };
   readonly log: { readonly level: string };
 }
 
@@ -36,6 +40,13 @@ export const Environment = z.object({
     .max(600_000)
     .default(30_000)
     .describe('time a request may take to arrive, and then to be answered'),
+  REQUESTS_IN_FLIGHT: z.coerce
+    .number()
+    .int()
+    .min(1)
+    .max(100_000)
+    .default(1000)
+    .describe('requests under way at once; further ones are told to come back'),
 });
 
 /** Reads the environment; throws `CoilproofError` naming every variable that is not usable. Empty counts as absent. */
@@ -52,7 +63,11 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
   return {
     listen: { host: e.HOST, port: e.PORT },
     store: e.DATABASE_URL === undefined ? { dataDir: e.DATA_DIR } : { postgresUrl: e.DATABASE_URL },
-    limits: { bodyBytes: e.BODY_LIMIT_BYTES, requestTimeout_ms: e.REQUEST_TIMEOUT_MS },
+    limits: {
+      bodyBytes: e.BODY_LIMIT_BYTES,
+      requestTimeout_ms: e.REQUEST_TIMEOUT_MS,
+      requestsInFlight: e.REQUESTS_IN_FLIGHT,
+    },
     log: { level: e.LOG_LEVEL },
   };
 }

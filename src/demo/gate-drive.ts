@@ -41,6 +41,7 @@ const DC_LINK_CHOKE: ApprovalRequest = {
       inductance: { nominal_H: 0.00088, lower_H: 0.00076, upper_H: 0.001, testFrequency_Hz: 10000 },
       resistance: { upper_ohm: 0.063, temperature_degC: 20 },
       saturation: { current_A: 13, inductanceDrop: 0.3, temperature_degC: 90 },
+      thermal: { current_A: 9, rise_K: 50 },
     },
     construction: {
       coil: {
@@ -77,6 +78,7 @@ const DC_LINK_CHOKE: ApprovalRequest = {
       timeLimit_s: 0.01,
       pathEnergyLimit_J: 0.1,
     },
+    hotspotLimit_degC: 115,
     evidence: { minimumUnits: 2 },
   },
   evidence: {
@@ -122,7 +124,7 @@ const BRAKE_COIL: ApprovalRequest = {
     revision: 'A',
     description: 'brake coil of the gate drive, air core',
     drawing: {
-      inductance: { nominal_H: 0.0265, lower_H: 0.0245, upper_H: 0.0285 },
+      inductance: { nominal_H: 0.0364, lower_H: 0.034, upper_H: 0.039 },
       resistance: { upper_ohm: 5.2, temperature_degC: 20 },
     },
     construction: {
@@ -133,7 +135,7 @@ const BRAKE_COIL: ApprovalRequest = {
   duty: {
     peakCurrent_A: 5,
     ambient_degC: 35,
-    required: { storedEnergy_J: 0.28 },
+    required: { storedEnergy_J: 0.4 },
     interruption: {
       path: { kind: 'clamp', clamp_V: 150 },
       safeCurrent_A: 0.05,

@@ -1,12 +1,12 @@
 import { randomUUID } from 'node:crypto';
-import underPressure from '@fastify/under-pressure';
 import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastify';
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
-import type { Simulator } from '../workers/simulation.ts';
+import type { Simulator } from '../approval/simulator.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
+import { overload } from './plugins/overload.ts';
 import { unmatched } from './plugins/unmatched.ts';
 import { sendProblem } from './problems.ts';
 import { approvals } from './routes/approvals/index.ts';
@@ -17,15 +17,18 @@ import { health } from './routes/service/health.ts';
 export interface AppOptions {
   readonly version: string;
   readonly logger: NonNullable<FastifyServerOptions['loggerInstance']>;
-  readonly limits: { readonly bodyBytes: number; readonly requestTimeout_ms: number };
+  readonly limits: Limits;
   readonly desk: ApprovalDesk;
   readonly simulator: Simulator;
 }
 
-const REQUEST_ID = /^[\w.-]{1,64}$/;
+export interface Limits {
+  readonly bodyBytes: number;
+  readonly requestTimeout_ms: number;
+  readonly requestsInFlight: number;
+}
 
-/** Beyond this delay of the event loop requests are turned away with 503, so that those under way still end. */
-const MAXIMUM_EVENT_LOOP_DELAY_MS = 5000;
+const REQUEST_ID = /^[\w.-]{1,64}$/;
 
 /** The service as an unstarted server: plugins in order, then the routes. Listening and signals are the caller's. */
 export async function createApp(options: AppOptions): Promise<FastifyInstance> {
@@ -57,7 +60,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
     return payload;
   });
 
-  await app.register(underPressure, { maxEventLoopDelay: MAXIMUM_EVENT_LOOP_DELAY_MS, retryAfter: 5 });
+  overload(app, options.limits.requestsInFlight);
   await openapi(app, options.version);
   metrics(app);
   health(app, () => options.desk.store.ping());

@@ -1,17 +1,9 @@
 import { availableParallelism } from 'node:os';
 import { Piscina } from 'piscina';
-import { type MonteCarloOptions, type MonteCarloResult, requireUsable, resultOf } from '../metrology/monte-carlo.ts';
+import type { Simulation, Simulator } from '../approval/simulator.ts';
+import { requireUsable, resultOf } from '../metrology/monte-carlo.ts';
 import { type Block, blocksOf } from '../metrology/trials.ts';
-import type { CalculationName } from '../physics/calculations/index.ts';
 import { InvalidQuantity } from '../physics/invalid-quantity.ts';
-
-/** One Monte Carlo propagation: a calculation, its request, and which numbers of it are uncertain. */
-export interface Simulation {
-  readonly calculation: CalculationName;
-  readonly request: object;
-  readonly uncertainty: Readonly<Record<string, number>>;
-  readonly options: MonteCarloOptions;
-}
 
 /** What a thread is told: some blocks of a simulation. */
 export interface SimulationTask extends Omit<Simulation, 'options'> {
@@ -22,12 +14,6 @@ export interface SimulationTask extends Omit<Simulation, 'options'> {
 export type SimulationShare =
   | { readonly outputNames: readonly string[]; readonly samples: readonly Float64Array[] }
   | { readonly refused: { readonly pointer: string; readonly detail: string } };
-
-/** Runs simulations on compute threads, so that the event loop stays free. */
-export interface Simulator {
-  simulate(simulation: Simulation): Promise<MonteCarloResult>;
-  close(): Promise<void>;
-}
 
 /**
  * A pool of as many threads as there are processors, started on first use. Blocks are dealt out in stripes and put back in order,

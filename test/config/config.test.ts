@@ -6,7 +6,7 @@ describe('configuration from the environment', () => {
     expect(readConfig({})).toEqual({
       listen: { host: '127.0.0.1', port: 8080 },
       store: { dataDir: './data' },
-      limits: { bodyBytes: 1048576, requestTimeout_ms: 30000 },
+      limits: { bodyBytes: 1048576, requestTimeout_ms: 30000, requestsInFlight: 1000 },
       log: { level: 'info' },
     });
   });

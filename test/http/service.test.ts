@@ -79,10 +79,10 @@ describe('what goes wrong is a problem document', () => {
   it('405 for a path that does not know the method, with Allow', async () => {
     const answer = await request(api.server).delete('/v1/approvals');
     expectProblem(answer, 405, 'method-not-allowed');
-    expect(answer.headers['allow']).toBe('GET, POST');
+    expect(answer.headers.allow).toBe('GET, POST');
     const withParameter = await request(api.server).delete('/v1/approvals/x');
     expectProblem(withParameter, 405, 'method-not-allowed');
-    expect(withParameter.headers['allow']).toBe('GET');
+    expect(withParameter.headers.allow).toBe('GET');
   });
 
   it.each([

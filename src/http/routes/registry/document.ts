@@ -14,7 +14,7 @@ interface Document<K extends RegistryKind, Params extends Record<string, string>
   readonly name: string;
   readonly params: z.ZodType<Params>;
   readonly idOf: (params: Params) => string;
-  readonly body: z.ZodType<Body>;
+  readonly body: z.ZodObject & z.ZodType<Body>;
   readonly answer: z.ZodType<unknown, RegistryKinds[K]>;
   readonly toValue: (params: Params, body: Body) => RegistryKinds[K];
   readonly examples: readonly Body[];
@@ -46,7 +46,8 @@ export function documentRoutes<K extends RegistryKind, Params extends Record<str
         }),
         params: d.params,
         headers: ConditionHeaders,
-        body: d.body.meta({ examples: d.examples as unknown[] }),
+        // A schema of its own: of one that is published by name the examples would be lost beside the reference to it.
+        body: d.body.extend({}).meta({ examples: d.examples as unknown[] }),
       },
     },
     async (request, reply) => {

@@ -1,7 +1,7 @@
 import type { FluxCharacteristic } from '../characteristic.ts';
-import { InvalidQuantity } from '../invalid-quantity.ts';
 import { type Collocation, radauCollocation, seriesThrough } from '../numerics/collocation.ts';
 import { type LegendreSeries, seriesIntegral, seriesValue } from '../numerics/legendre-series.ts';
+import { outOfRange } from './course.ts';
 import {
   continued,
   type Drive,
@@ -16,6 +16,8 @@ import {
 
 /** Time along a response in σ (see unit-response.ts), whose current moves one way: dt = L_d dσ. */
 export interface Clock {
+  /** When its end is reached, in s; Infinity where that is for a time to say. */
+  readonly duration_s: number;
   /** When the current is there, in s; Infinity where it is not, or beyond where the clock ends. */
   timeOf(current_A: number): number;
   /** Current and dλ/dt, the voltage across the inductance. */
@@ -24,22 +26,25 @@ export interface Clock {
   integralsTo(time_s: number): { readonly charge: number; readonly square: number };
 }
 
-/** Where a clock has to reach: a current, or a time, whichever comes first; ±Infinity as a current for as far as it goes. */
+/** Where a clock has to reach: a current, a σ or a time, whichever comes first. The current may be one that is only approached. */
 export interface ClockEnd {
   readonly current_A: number;
+  readonly sigma: number;
   readonly time_s: number;
 }
 
 /** The clock of a constant inductance: closed forms. */
 export function linearClock(inductance_H: number, drive: Drive, end: ClockEnd): Clock {
-  const sigmaEnd = reaches(drive, end.current_A) ? responseSigma(drive, end.current_A) : Infinity;
+  const sigmaThere = reaches(drive, end.current_A) ? responseSigma(drive, end.current_A) : Infinity;
+  const sigmaEnd = Math.min(end.sigma, sigmaThere);
   const sigmaAt = (time_s: number) => Math.min(time_s / inductance_H, sigmaEnd);
   return {
+    duration_s: inductance_H * sigmaEnd,
     timeOf: (current_A) => (reaches(drive, current_A) ? inductance_H * responseSigma(drive, current_A) : Infinity),
     at: (time_s) => {
       const sigma = sigmaAt(time_s);
       return {
-        current_A: sigma === sigmaEnd ? end.current_A : responseCurrent(drive, sigma),
+        current_A: sigma === sigmaThere ? end.current_A : responseCurrent(drive, sigma),
         voltage_V: responseVoltage(drive, sigma),
       };
     },
@@ -54,8 +59,9 @@ export function linearClock(inductance_H: number, drive: Drive, end: ClockEnd): 
 }
 
 /** The clock of a current that stays where it is, because source and resistance balance. */
-export function standingClock(current_A: number): Clock {
+export function standingClock(current_A: number, duration_s: number): Clock {
   return {
+    duration_s,
     timeOf: (current) => (current === current_A ? 0 : Infinity),
     at: () => ({ current_A, voltage_V: 0 }),
     integralsTo: (time_s) => ({ charge: current_A * time_s, square: current_A * current_A * time_s }),
@@ -90,8 +96,7 @@ const FLUX_TOLERANCE = 1e-11;
 
 /**
  * The clock of any characteristic: panels of 12-point Radau quadrature, halved until the integrands' Legendre series have
- * converged and the flux linkage is conserved, until the end's current or time is reached, whichever comes first. Null where the
- * characteristic ends before that.
+ * converged and the flux linkage is conserved, until the end is reached. Null where the characteristic ends before that.
  *
  * The way is cut at known currents, and the response counted anew from each: at zero and where L_d may have a corner
  * (`slopeTurns_A`), and at every decade on the way down to zero, because counted from the start a small current would be the
@@ -100,24 +105,24 @@ const FLUX_TOLERANCE = 1e-11;
  */
 export function panelClock(characteristic: FluxCharacteristic, drive: Drive, end: ClockEnd): Clock | null {
   const panels: Panel[] = [];
-  const total: Total = { time_s: 0, charge: 0, square: 0 };
+  const total: Total = { sigma: 0, time_s: 0, charge: 0, square: 0 };
   const cuts = cutsBetween(characteristic, drive, end.current_A);
+  const isOver = () => total.time_s >= end.time_s || total.sigma >= end.sigma;
   let from = drive.initialCurrent_A;
   for (const to of cuts) {
-    if (total.time_s >= end.time_s) break;
-    addPanels(panels, total, characteristic, driveFrom(drive.drive_V, drive.resistance_ohm, from), {
-      ...end,
-      current_A: to,
-    });
+    if (isOver()) break;
+    const way = driveFrom(drive.drive_V, drive.resistance_ohm, from);
+    addPanels(panels, total, characteristic, way, { ...end, current_A: to });
     from = to;
   }
+  // The way may end where the characteristic does, and not where it should.
   const last = cuts.at(-1) ?? drive.initialCurrent_A;
-  // The way ends where it should, or only as far as the characteristic goes.
-  if (last !== end.current_A && total.time_s < end.time_s) return null;
-  return clockOver(panels, characteristic);
+  if (last !== end.current_A && !isOver()) return null;
+  return clockOver(panels, characteristic, end.time_s === Infinity ? total.time_s : Infinity);
 }
 
 interface Total {
+  sigma: number;
   time_s: number;
   charge: number;
   square: number;
@@ -139,20 +144,23 @@ function cutsBetween(
   return [...new Set(inside)].sort((a, b) => direction * (a - b)).concat(last);
 }
 
-/** Panels from the drive's initial current to the end's current or time. */
+/** Panels from the way's initial current to the end. */
 function addPanels(panels: Panel[], total: Total, characteristic: FluxCharacteristic, way: Drive, end: ClockEnd): void {
-  let left = reaches(way, end.current_A) ? responseSigma(way, end.current_A) : Infinity;
+  const sigmaThere = reaches(way, end.current_A) ? responseSigma(way, end.current_A) : Infinity;
+  const isThere = sigmaThere <= end.sigma - total.sigma;
+  let left = isThere ? sigmaThere : end.sigma - total.sigma;
   let drive = way;
   let width = Math.min(
     left,
     (end.time_s - total.time_s) / characteristic.differentialInductance_H(way.initialCurrent_A),
   );
-  if (!(width > 0 && Number.isFinite(width))) throw outOfRange();
+  // Less is a subnormal number, with digits missing.
+  if (!(width > 1e-290 && Number.isFinite(width))) throw outOfRange();
   let halvings = 0;
   while (left > 0 && total.time_s < end.time_s) {
     // A sliver left before the end would cost a panel of its own.
     const wanted = 1.001 * width >= left ? left : width;
-    const endCurrent_A = wanted === left ? end.current_A : responseCurrent(drive, wanted);
+    const endCurrent_A = isThere && wanted === left ? end.current_A : responseCurrent(drive, wanted);
     const panel = integratePanel(characteristic, drive, wanted, endCurrent_A);
     const truncation = judge(panel, total, wanted);
     const quality = Math.max(truncation, panel.fluxLost);
@@ -172,6 +180,8 @@ function addPanels(panels: Panel[], total: Total, characteristic: FluxCharacteri
       inductance: panel.inductance,
     });
     if (panels.length > 20_000) throw outOfRange();
+    // Exactly its end where that is reached: what is summed up may stay short of it by rounding.
+    total.sigma = wanted === left && !isThere ? end.sigma : total.sigma + wanted;
     total.time_s += panel.time_s;
     total.charge += panel.charge;
     total.square += panel.square;
@@ -180,10 +190,6 @@ function addPanels(panels: Panel[], total: Total, characteristic: FluxCharacteri
     width = wanted * (truncation < 1e-3 ? 3 : truncation < 0.1 ? 1.5 : 1);
     halvings = 0;
   }
-}
-
-function outOfRange(): InvalidQuantity {
-  return new InvalidQuantity('', 'the transient leaves the range of numbers that can be calculated with');
 }
 
 interface PanelIntegrals {
@@ -238,7 +244,8 @@ function integratePanel(
 /** The panel's worst truncation over its tolerance: 1 or less is good. */
 function judge(panel: PanelIntegrals, before: Total, width: number): number {
   const [time, charge, square] = panel.tails;
-  const ratio = (tail: number, total: number) => (tail === 0 ? 0 : (width * tail) / (TAIL_TOLERANCE * total));
+  // Subnormal totals (i² of the smallest currents) have no digits to be judged by.
+  const ratio = (tail: number, total: number) => (total < 1e-280 ? 0 : (width * tail) / (TAIL_TOLERANCE * total));
   return Math.max(
     ratio(time, before.time_s + panel.time_s),
     ratio(charge, Math.abs(before.charge) + Math.abs(panel.charge)),
@@ -246,7 +253,7 @@ function judge(panel: PanelIntegrals, before: Total, width: number): number {
   );
 }
 
-function clockOver(panels: readonly Panel[], characteristic: FluxCharacteristic): Clock {
+function clockOver(panels: readonly Panel[], characteristic: FluxCharacteristic, duration_s: number): Clock {
   const first = panels[0]!;
   const direction = Math.sign(panels.at(-1)!.endCurrent_A - first.drive.initialCurrent_A);
   const place = (time_s: number) => {
@@ -256,14 +263,17 @@ function clockOver(panels: readonly Panel[], characteristic: FluxCharacteristic)
     return { panel, sigma, current_A: x === 1 ? panel.endCurrent_A : responseCurrent(panel.drive, sigma) };
   };
   return {
+    duration_s,
     timeOf: (current_A) => {
+      if (direction * (current_A - first.drive.initialCurrent_A) < 0) return Infinity;
       const panel = lastStarting(
         panels,
         (candidate) => direction * (current_A - candidate.drive.initialCurrent_A) >= 0,
       );
-      if (direction * (current_A - panel.endCurrent_A) > 0) return Number.POSITIVE_INFINITY;
+      if (direction * (current_A - panel.endCurrent_A) > 0) return Infinity;
       if (current_A === panel.drive.initialCurrent_A) return panel.startTime_s;
-      const sigma = current_A === panel.endCurrent_A ? panel.width : responseSigma(panel.drive, current_A);
+      const counted = responseSigma(panel.drive, current_A);
+      const sigma = counted < panel.width && current_A !== panel.endCurrent_A ? counted : panel.width;
       return panel.startTime_s + integratePanel(characteristic, panel.drive, sigma, current_A).time_s;
     },
     at: (time_s) => {

@@ -1,3 +1,5 @@
+import { InvalidQuantity } from '../invalid-quantity.ts';
+
 /** What a transient did from 0 to its horizon: everything that the energy audit and the answer are made from. */
 export interface Course {
   readonly horizon_s: number;
@@ -18,3 +20,8 @@ export interface Course {
 
 /** How far a default horizon goes: this many natural logarithms of decay, to 0.1 % of the change. */
 export const HORIZON_DECAY = Math.log(1000);
+
+/** For quantities that are each in range but lead to numbers that are not. */
+export function outOfRange(): InvalidQuantity {
+  return new InvalidQuantity('', 'the transient leaves the range of numbers that can be calculated with');
+}

@@ -1,6 +1,6 @@
 import { integrate } from '../numerics/quadrature.ts';
 import { findRoot } from '../numerics/roots.ts';
-import { type Course, HORIZON_DECAY } from './course.ts';
+import { type Course, HORIZON_DECAY, outOfRange } from './course.ts';
 import type { Window } from './loop.ts';
 import { type Damping, dampingOf, type SnubberLoop, slowestRate } from './snubber-loop.ts';
 import { decayMean, logMean } from './unit-response.ts';
@@ -28,6 +28,8 @@ export function linearSnubberCourse(inductance_H: number, loop: SnubberLoop, win
   const slope = (source_V - resistance * initialCurrent_A) / inductance_H;
   // i' + rate·i at the start, formed without the cancellation of its two parts.
   const residue = source_V / inductance_H - damping.otherRate * initialCurrent_A;
+  const scale = damping.alpha + damping.naturalSquared + slope + residue + initialCurrent_A / capacitance_F;
+  if (!(Number.isFinite(scale) && damping.naturalSquared > 0)) throw outOfRange();
   const current = (time_s: number) => solution(damping, initialCurrent_A, residue, time_s);
   const capacitor = (time_s: number) =>
     source_V * stepResponse(damping, time_s) + (initialCurrent_A / capacitance_F) * impulse(damping, time_s);
@@ -113,13 +115,13 @@ function safeTime(
     if (!startsAbove) return 0;
     if (safe === 0) return null;
     const fall = (time_s: number) => current(time_s) - safe;
-    return findRoot(fall, 0, firstExtremum_s ?? firstBelow(fall, 0, damping));
+    return fallBetween(fall, 0, firstExtremum_s ?? firstBelow(fall, 0, damping));
   }
   if (safe === 0) return null;
   const side = Math.sign(extremum);
   if (!damping.rings) {
     const fall = (time_s: number) => side * current(time_s) - safe;
-    return findRoot(fall, firstExtremum_s, firstBelow(fall, firstExtremum_s, damping));
+    return fallBetween(fall, firstExtremum_s, firstBelow(fall, firstExtremum_s, damping));
   }
   // Each extremum is the one before turned round and smaller by e^(−απ/ω): count those above `safe`, then the fall after the last.
   const half_s = Math.PI / damping.split;
@@ -129,7 +131,13 @@ function safeTime(
   if (Math.abs(extremum) <= safe * Math.exp(swings * loss)) swings -= 1;
   const level = safe * Math.exp(swings * loss);
   const fall = (time_s: number) => side * current(time_s) - level;
-  return findRoot(fall, firstExtremum_s, firstExtremum_s + half_s) + swings * half_s;
+  return fallBetween(fall, firstExtremum_s, firstExtremum_s + half_s) + swings * half_s;
+}
+
+/** The zero of a falling `f` between two times. Throws where its values at them overflow. */
+function fallBetween(f: (time_s: number) => number, start_s: number, stop_s: number): number {
+  if (!(f(start_s) >= 0 && f(stop_s) <= 0 && Number.isFinite(f(start_s) - f(stop_s)))) throw outOfRange();
+  return findRoot(f, start_s, stop_s);
 }
 
 /** A time after `start_s` at which the falling `f` is no longer positive. */

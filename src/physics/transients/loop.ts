@@ -38,15 +38,12 @@ export function loopCourse(characteristic: FluxCharacteristic, loop: Loop, windo
   const endsAtZero = loop.path?.oneWay === true && drive.drive_V < 0;
   const restsAt = endsAtZero ? 0 : settledCurrent(drive);
   const safe_A = safeLevel(drive, restsAt, endsAtZero, window.safeCurrent_A);
-  const end_A = window.until_s === undefined ? naturalEnd(drive, endsAtZero, restsAt, safe_A) : restsAt;
-  const clock = clockOf(characteristic, drive, { current_A: end_A, time_s: window.until_s ?? Infinity }, restsAt);
-
-  const stands = isStanding(drive, restsAt);
-  const horizon_s =
-    window.until_s ??
-    (stands
-      ? (HORIZON_DECAY * characteristic.differentialInductance_H(restsAt)) / drive.resistance_ohm
-      : clock.timeOf(end_A));
+  const end =
+    window.until_s === undefined
+      ? naturalEnd(drive, endsAtZero, restsAt, safe_A)
+      : { current_A: restsAt, sigma: Infinity, time_s: window.until_s };
+  const clock = clockOf(characteristic, drive, end, restsAt);
+  const horizon_s = window.until_s ?? clock.duration_s;
   const reached = (current_A: number) => {
     const time_s = clock.timeOf(current_A);
     return time_s <= horizon_s ? time_s : null;
@@ -125,20 +122,25 @@ function safeLevel(
   return level === restsAt && !endsAtZero ? null : level;
 }
 
-function naturalEnd(drive: Drive, endsAtZero: boolean, restsAt: number, safe_A: number | null): number {
-  if (endsAtZero) return 0;
+function naturalEnd(drive: Drive, endsAtZero: boolean, restsAt: number, safe_A: number | null): ClockEnd {
+  const time_s = Infinity;
+  if (endsAtZero) return { current_A: 0, sigma: Infinity, time_s };
   if (!(drive.resistance_ohm > 0)) {
     throw new InvalidQuantity(
       '/until_s',
       'needed: with a source and no resistance in the loop the current grows without limit and has no end of its own',
     );
   }
-  const nearly = restsAt + (drive.initialCurrent_A - restsAt) * Math.exp(-HORIZON_DECAY);
-  return safe_A !== null && Math.abs(safe_A - restsAt) < Math.abs(nearly - restsAt) ? safe_A : nearly;
+  const nearly = Math.abs(drive.initialCurrent_A - restsAt) * Math.exp(-HORIZON_DECAY);
+  return safe_A !== null && Math.abs(safe_A - restsAt) < nearly
+    ? { current_A: safe_A, sigma: Infinity, time_s }
+    : { current_A: restsAt, sigma: HORIZON_DECAY / drive.resistance_ohm, time_s };
 }
 
 function clockOf(characteristic: FluxCharacteristic, drive: Drive, end: ClockEnd, restsAt: number): Clock {
-  if (isStanding(drive, restsAt)) return standingClock(drive.initialCurrent_A);
+  if (isStanding(drive, restsAt)) {
+    return standingClock(restsAt, end.sigma * characteristic.differentialInductance_H(restsAt));
+  }
   if (characteristic.kind === 'linear') return linearClock(characteristic.differentialInductance_H(0), drive, end);
   const clock = panelClock(characteristic, drive, end);
   if (clock !== null) return clock;

@@ -3,17 +3,17 @@ import { InvalidQuantity } from '../invalid-quantity.ts';
 import { type LegendreSeries, seriesSlope, seriesValue } from '../numerics/legendre-series.ts';
 import { findRoot } from '../numerics/roots.ts';
 import { bounded, lastStarting, positionAt } from './clock.ts';
-import { type Course, HORIZON_DECAY } from './course.ts';
+import { type Course, HORIZON_DECAY, outOfRange } from './course.ts';
 import { UNDAMPED_PERIODS } from './linear-snubber.ts';
 import type { Window } from './loop.ts';
 import { dampingOf, type SnubberLoop, slowestRate } from './snubber-loop.ts';
 import { elapsedAt, type SnubberEquation, type SnubberState, type SnubberStep, snubberStep } from './snubber-step.ts';
 
 /**
- * A course with no end asked for stops at this current zero, after 100 oscillations, however lightly damped; or at the next, so that the
+ * A course with no end asked for stops at this current zero, after 50 oscillations, however lightly damped; or at the next, so that the
  * capacitor is full (see UNDAMPED_PERIODS).
  */
-const FIRST_LAST_ZERO = 199;
+const FIRST_LAST_ZERO = 99;
 
 /** A window that asks for more oscillations than this is refused, at once where that is certain, else when so many steps are made. */
 const MOST_OSCILLATIONS = 500;
@@ -37,7 +37,7 @@ interface TimedStep extends SnubberStep {
  * capacitor voltage swing back and forth.
  *
  * Without `until_s` it ends where the linear circuit of the inductance at zero current would (see linear-snubber.ts) or, if
- * that is later, where the current is safe for good; at the latest after 100 oscillations.
+ * that is later, where the current is safe for good; at the latest after 50 oscillations.
  *
  * "For good" is certain and not only so far: with H = W(i) + ½C·u², which only falls, a swing that ends at i has
  * H = W(i) + ½C·R²·i². Once |i| is at or below the safe current and H at or below that at the safe current, no swing to come exceeds it.
@@ -48,6 +48,8 @@ export function saturatingSnubberCourse(characteristic: FluxCharacteristic, loop
   const resistance_ohm = loop.windingResistance_ohm + pathResistance_ohm;
   const equation: SnubberEquation = { characteristic, resistance_ohm, capacitance_F };
   const damping = dampingOf(characteristic.differentialInductance_H(0), loop);
+  // Beyond this its times are subnormal numbers.
+  if (!(damping.rate + damping.split < 1e290 && damping.naturalSquared > 0)) throw outOfRange();
   const natural_s =
     resistance_ohm > 0 ? HORIZON_DECAY / slowestRate(damping) : (UNDAMPED_PERIODS * 2 * Math.PI) / damping.split;
   if (window.until_s !== undefined) checkOscillations(equation, window.until_s);
@@ -98,6 +100,7 @@ function follow(equation: SnubberEquation, loop: SnubberLoop, window: Window, wi
   const isSafeForGood = safeTest(equation, window.safeCurrent_A, stored);
   let state: SnubberState = { current_A: loop.initialCurrent_A, excess_V: -loop.source_V };
   const atFirst = stored(state);
+  if (!Number.isFinite(atFirst)) throw outOfRange();
   /** Whether looking on can change the answer on the safe current; beyond a window that was asked for, being above it is final. */
   const isOpen = () =>
     window.safeCurrent_A !== undefined &&
@@ -125,9 +128,7 @@ function follow(equation: SnubberEquation, loop: SnubberLoop, window: Window, wi
     }
     const quality = step === null ? Infinity : Math.max(truncation, step.fluxLost);
     if (step === null || (!(quality <= 1) && halvings < 45)) {
-      if (++halvings > 2100) {
-        throw new InvalidQuantity('', 'the transient leaves the range of numbers that can be calculated with');
-      }
+      if (++halvings > 300 || Number.isNaN(quality)) throw outOfRange();
       const toCorner = step === null ? null : widthToCorner(equation, step, corners);
       // A corner of L_d inside: end on it. Else, and where it is the end already, shorten by the order of the truncation.
       if (toCorner !== null && toCorner < 0.999 * width) width = toCorner;

@@ -180,7 +180,9 @@ function stageCurrents(
       move = Math.max(move, Math.abs(change[j]!));
       size = Math.max(size, Math.abs(next));
     }
-    if (move <= NEWTON_TOLERANCE * size) return { currents, inductances };
+    // The secant's order is 1.6: a small move that is a thousandth of the one before leaves an error below rounding.
+    if (move <= NEWTON_TOLERANCE * size || (move <= 1e-9 * size && move <= 1e-3 * lastMove))
+      return { currents, inductances };
     if (!Number.isFinite(move) || (iteration > 4 && move > lastMove && move > 1e-10 * size)) return null;
     lastMove = move;
   }

@@ -2,7 +2,7 @@ import type { FluxCharacteristic } from '../characteristic.ts';
 import { InvalidQuantity } from '../invalid-quantity.ts';
 import type { Method } from '../method.ts';
 import { bounded } from './clock.ts';
-import type { Course } from './course.ts';
+import { type Course, outOfRange } from './course.ts';
 import { linearSnubberCourse } from './linear-snubber.ts';
 import { loopCourse } from './loop.ts';
 import { type Path, type StaticPath, staticPath } from './path.ts';
@@ -82,7 +82,7 @@ export const DEFAULT_SAMPLES = 200;
  * Without `until_s` it ends where a diode or clamp has brought the current to zero; else where what is left of the change is
  * 0.1 % (6.9 of the longest time constant; with a snubber that of the inductance at zero current) or, if later, where the
  * current is safe for good. A snubber with no resistance in the loop: after 20.5 periods; a saturating inductor that rings for
- * very long: after 100 oscillations.
+ * very long: after 50 oscillations.
  *
  * After a diode or clamp has blocked the current is 0 and the path holds the source's voltage, or none.
  *
@@ -98,10 +98,11 @@ export function transient(inductor: FluxCharacteristic, request: TransientReques
   check(inductor, request);
   const initialCurrent_A = request.event === 'energise' ? 0 : request.initialCurrent_A;
   const source_V = request.source_V ?? 0;
+  const initial_J = inductor.energy_J(initialCurrent_A);
+  if (!Number.isFinite(initial_J)) throw outOfRange();
   const { course, path, method } = courseOf(inductor, request, initialCurrent_A, source_V);
   const end = course.at(course.horizon_s);
 
-  const initial_J = inductor.energy_J(initialCurrent_A);
   const delivered_J = source_V * course.charge;
   const winding_J = request.windingResistance_ohm * course.square;
   const capacitor_J = (path.capacitance_F / 2) * course.capacitorVoltage_V ** 2;
@@ -117,9 +118,7 @@ export function transient(inductor: FluxCharacteristic, request: TransientReques
     waveform: waveformOf(course, request.samples ?? DEFAULT_SAMPLES),
     method,
   };
-  if (!isRepresentable(answer)) {
-    throw new InvalidQuantity('', 'the transient leaves the range of numbers that can be calculated with');
-  }
+  if (!isRepresentable(answer)) throw outOfRange();
   return answer;
 }
 

@@ -64,7 +64,7 @@ function multilayerMethod(coil: Multilayer, inductance_H: number): Method {
 /**
  * What a real winding has and an even current does not, relative to the inductance.
  *
- * - Round wire in its cell of the section: µ0 a N (ln(spacing/bare diameter) + 0.138 + E), E ≤ 0.017, for square cells (Rosa and
+ * - Round wire in its cell of the section: µ0 a N (ln(spacing/bare diameter) + 0.138 + E), E ≤ 0.02, for square cells (Rosa and
  *   Grover, NBS Scientific Paper 169, from memory), at twice the bare diameter µ0 a N · 0.85. Where the turns lie in one row the
  *   cell is a rectangle: the geometric mean distance 0.2235 (w + h) against 0.3894 of the wire's diameter, and up to 0.338 of
  *   neighbours (their table for a single layer).
@@ -76,7 +76,7 @@ function windingError(coil: Multilayer, inductance_H: number): number {
   const meanDiameter = (outerDiameter_m + innerDiameter_m) / 2;
   const { thin_m, wide_m } = turnCell(coil);
   const oneRow = wide_m > thin_m;
-  const cell = Math.log((0.2235 / 0.3894) * 2 * (1 + wide_m / thin_m)) + (oneRow ? 0.338 : 0.017);
+  const cell = Math.log((0.2235 / 0.3894) * 2 * (1 + wide_m / thin_m)) + (oneRow ? 0.338 : 0.02);
   const perTurn = (VACUUM_PERMEABILITY_H_PER_M * meanDiameter) / 2;
   const axial = ((VACUUM_PERMEABILITY_H_PER_M * length_m) / (2 * Math.PI)) * Math.asinh(length_m / (meanDiameter / 2));
   return (perTurn * cell * turns + axial) / inductance_H + 0.75 * Math.min(1, thin_m / meanDiameter) ** 2;

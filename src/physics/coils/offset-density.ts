@@ -15,46 +15,75 @@ export interface FoldedPiece extends OffsetPiece {
   readonly oddDensity: readonly [number, number];
 }
 
-/** A piece of the radial offset on one side of zero. */
-export interface SignedPiece extends OffsetPiece {
-  readonly sign: 1 | -1;
+/** A piece of the radial offset δ = |r₂ − r₁|, with the interval that it leaves for the smaller of the radii, at its two ends. */
+export interface RadialPiece extends OffsetPiece {
+  readonly lower: readonly [number, number];
+  readonly upper: readonly [number, number];
+}
+
+/** An interval of radii in m; equal ends: a fixed radius. */
+export type Radii = readonly [inner: number, outer: number];
+
+/**
+ * Distance of two radii, each uniform in an interval of its own, cut at the corners of the trapezoid. Equal intervals give twice
+ * the density of one side: the other is its mirror image.
+ */
+export function radialOffsets(first: Radii, second: Radii): RadialPiece[] {
+  const height = 1 / Math.max(first[1] - first[0], second[1] - second[0]);
+  if (height === Infinity) {
+    const radius = Math.min(first[0], second[0]);
+    const start = Math.abs(first[0] - second[0]);
+    return [{ start, width: 0, density: [1, 1], lower: [radius, radius], upper: [radius, radius] }];
+  }
+  if (first[0] === second[0] && first[1] === second[1]) {
+    const [inner, outer] = first;
+    return [{ start: 0, width: outer - inner, density: [2 * height, 0], lower: [inner, inner], upper: [outer, inner] }];
+  }
+  return [...outwardOffsets(first, second, height), ...outwardOffsets(second, first, height)];
+}
+
+interface Corner {
+  readonly at: number;
+  readonly density: number;
+  readonly lower: number;
+  readonly upper: number;
 }
 
 /**
- * Offset r₂ − r₁ of r₁ uniform in [inner₁, outer₁] and r₂ in [inner₂, outer₂] (m; equal ends: a fixed radius), cut at zero and at
- * the trapezoid's corners. Equal intervals give one side with twice the density: the other is its mirror image.
+ * The side on which `greater` has the greater radius. At the trapezoid's corners the smaller radius is known without a subtraction
+ * from the greater, in which a coil near the axis would lose its digits; between them everything is linear.
  */
-export function radialOffsets(inner1: number, outer1: number, inner2: number, outer2: number): SignedPiece[] {
-  const build1 = outer1 - inner1;
-  const build2 = outer2 - inner2;
+function outwardOffsets([a1, b1]: Radii, [a2, b2]: Radii, height: number): RadialPiece[] {
+  const [build1, build2] = [b1 - a1, b2 - a2];
   const least = Math.min(build1, build2);
-  const most = Math.max(build1, build2);
-  if (most === 0) {
-    const offset = inner2 - inner1;
-    return [{ start: Math.abs(offset), width: 0, density: [1, 1], sign: offset < 0 ? -1 : 1 }];
-  }
-  const height = 1 / most;
-  if (inner1 === inner2 && outer1 === outer2) {
-    return [{ start: 0, width: most, density: [2 * height, 0], sign: 1 }];
-  }
-  // Widths from the builds, not from differences of far corners, which would lose a thin winding's digits.
-  const flatFrom = Math.min(inner2 - inner1, outer2 - outer1);
-  const flatTo = Math.max(inner2 - inner1, outer2 - outer1);
-  return [
-    ...cutAtZero(inner2 - outer1, flatFrom, least, 0, height),
-    ...cutAtZero(flatFrom, flatTo, most - least, height, height),
-    ...cutAtZero(flatTo, outer2 - inner1, least, height, 0),
+  const corners: Corner[] = [
+    { at: a2 - b1, density: least === 0 ? height : 0, lower: b1, upper: b1 },
+    build1 <= build2
+      ? { at: a2 - a1, density: height, lower: a1, upper: b1 }
+      : { at: b2 - b1, density: height, lower: b1 - build2, upper: b1 },
+    build1 <= build2
+      ? { at: b2 - b1, density: height, lower: a1, upper: b1 }
+      : { at: a2 - a1, density: height, lower: a1, upper: a1 + build2 },
+    { at: b2 - a1, density: least === 0 ? height : 0, lower: a1, upper: a1 },
   ];
+  // Widths from the builds, not from differences of far corners, in which a thin winding would lose its digits.
+  return [least, Math.abs(build1 - build2), least].flatMap((width, i) =>
+    width === 0 ? [] : piecesFrom(corners[i]!, corners[i + 1]!, width),
+  );
 }
 
-function cutAtZero(from: number, to: number, width: number, atFrom: number, atTo: number): SignedPiece[] {
-  if (width === 0) return [];
-  if (from >= 0) return [{ start: from, width, density: [atFrom, atTo], sign: 1 }];
-  if (to <= 0) return [{ start: -to, width, density: [atTo, atFrom], sign: -1 }];
-  const atZero = atFrom + (atTo - atFrom) * (-from / width);
+function piecesFrom(from: Corner, to: Corner, width: number): RadialPiece[] {
+  if (to.at <= 0) return [];
+  const cut = from.at < 0 ? -from.at / width : 0;
+  const mixed = (start: number, end: number): [number, number] => [start * (1 - cut) + end * cut, end];
   return [
-    { start: 0, width: -from, density: [atZero, atFrom], sign: -1 },
-    { start: 0, width: to, density: [atZero, atTo], sign: 1 },
+    {
+      start: Math.max(0, from.at),
+      width: from.at < 0 ? to.at : width,
+      density: mixed(from.density, to.density),
+      lower: mixed(from.lower, to.lower),
+      upper: mixed(from.upper, to.upper),
+    },
   ];
 }
 
@@ -66,27 +95,32 @@ export function axialOffsets(length1: number, length2: number, distance: number)
   const most = Math.max(length1, length2);
   const least = Math.min(length1, length2);
   if (most === 0) return [{ start: distance, width: 0, density: [1, 1], oddDensity: [1, 1] }];
+  if (distance >= (most + least) / 2) return trapezoidApart(most, least, distance);
   return least === 0 ? foldedBox(most, distance) : foldedTrapezoid(most, least, distance);
 }
 
+/** Nothing to fold: the trapezoid rises over the lesser length, stays for the difference, and falls. */
+function trapezoidApart(most: number, least: number, distance: number): FoldedPiece[] {
+  const height = 1 / most;
+  const sides = [
+    { start: distance - (most + least) / 2, width: least, density: [0, height] },
+    { start: distance - (most - least) / 2, width: most - least, density: [height, height] },
+    { start: distance + (most - least) / 2, width: least, density: [height, 0] },
+  ] as const;
+  return sides.filter(({ width }) => width > 0).map((side) => ({ ...side, oddDensity: side.density }));
+}
+
+/** One length is zero, and the other reaches over the origin. */
 function foldedBox(length: number, distance: number): FoldedPiece[] {
-  const half = length / 2;
+  const start = length / 2 - distance;
   const height = 1 / length;
-  if (distance >= half) {
-    return [{ start: distance - half, width: length, density: [height, height], oddDensity: [height, height] }];
-  }
-  const pieces: FoldedPiece[] = [
-    { start: 0, width: half - distance, density: [2 * height, 2 * height], oddDensity: [0, 0] },
-  ];
-  if (distance > 0) {
-    const width = 2 * distance;
-    pieces.push({ start: half - distance, width, density: [height, height], oddDensity: [height, height] });
-  }
-  return pieces;
+  const both: FoldedPiece = { start: 0, width: start, density: [2 * height, 2 * height], oddDensity: [0, 0] };
+  if (distance === 0) return [both];
+  return [both, { start, width: 2 * distance, density: [height, height], oddDensity: [height, height] }];
 }
 
 /**
- * The corners of the trapezoid lie at `distance` ± (most ± least)/2. Each is kept as a rounded sum and what rounding left over, so
+ * Both lengths count, and the trapezoid reaches over the origin. Its corners lie at `distance` ± (most ± least)/2. Each is kept as a rounded sum and what rounding left over, so
  * that the width between two of them is right however close they are, and the densities are summed from those widths.
  */
 function foldedTrapezoid(most: number, least: number, distance: number): FoldedPiece[] {
@@ -98,8 +132,7 @@ function foldedTrapezoid(most: number, least: number, distance: number): FoldedP
       return sum < 0 ? negative([sum, rest + low]) : ([sum, rest + low] as const);
     })
     .sort((first, second) => first[0] - second[0] || first[1] - second[1]);
-  const straddles = distance < outer[0];
-  const marks = straddles ? [[0, 0] as const, ...corners] : corners;
+  const marks = [[0, 0] as const, ...corners];
   const widths = marks.slice(1).map((mark, i) => Math.max(0, mark[0] - marks[i]![0] + (mark[1] - marks[i]![1])));
   // Slope of p at offset z, in units of 1/(most·least): +1 on the rising side, −1 on the falling one.
   const slope = (z: number): number => {

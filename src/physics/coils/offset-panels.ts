@@ -1,11 +1,11 @@
-import type { FoldedPiece, SignedPiece } from './offset-density.ts';
+import type { FoldedPiece, RadialPiece } from './offset-density.ts';
 
 /**
- * A rectangle in the plane of the offsets (δ, z), z ≥ 0 and δ of the radial piece's sign, with the densities at its edges.
+ * A rectangle in the plane of the offsets (δ, z), both ≥ 0, with the densities at its edges.
  * `corner`: it touches the origin, where the kernel of two filaments is singular.
  */
 export interface Panel {
-  readonly radial: SignedPiece;
+  readonly radial: RadialPiece;
   readonly axial: FoldedPiece;
   readonly corner: boolean;
 }
@@ -20,7 +20,7 @@ const SMALLEST = 1e-18;
 const LONGEST_LINE_CORNER = 1e-2;
 
 /** Appends the panels of one pair of pieces: a geometric series of rectangles around the origin, so few however thin or near. */
-export function cutIntoPanels(radial: SignedPiece, axial: FoldedPiece, panels: Panel[]): void {
+export function cutIntoPanels(radial: RadialPiece, axial: FoldedPiece, panels: Panel[]): void {
   const radialEnd = radial.start + radial.width;
   const axialEnd = axial.start + axial.width;
   const near = Math.max(radial.start, axial.start);
@@ -45,14 +45,15 @@ export function cutIntoPanels(radial: SignedPiece, axial: FoldedPiece, panels: P
   for (const r of cutRadial(radial, at)) for (const z of cutAxial(axial, at)) cutIntoPanels(r, z, panels);
 }
 
-function cutRadial(piece: SignedPiece, at: number): SignedPiece[] {
-  const { start, width, density, sign } = piece;
+function cutRadial(piece: RadialPiece, at: number): RadialPiece[] {
+  const { start, width, density, lower, upper } = piece;
   if (at <= start || at >= start + width) return [piece];
   const [near, far] = [at - start, start + width - at];
-  const middle = between(density, near / width);
+  const cut = near / width;
+  const [densityAt, lowerAt, upperAt] = [between(density, cut), between(lower, cut), between(upper, cut)];
   return [
-    { start, width: near, density: [density[0], middle], sign },
-    { start: at, width: far, density: [middle, density[1]], sign },
+    { start, width: near, density: [density[0], densityAt], lower: [lower[0], lowerAt], upper: [upper[0], upperAt] },
+    { start: at, width: far, density: [densityAt, density[1]], lower: [lowerAt, lower[1]], upper: [upperAt, upper[1]] },
   ];
 }
 
@@ -68,6 +69,12 @@ function cutAxial(piece: FoldedPiece, at: number): FoldedPiece[] {
   ];
 }
 
-function between([from, to]: readonly [number, number], fraction: number): number {
-  return from + (to - from) * fraction;
+/** Value at a fraction of the way between two ends. */
+export function between([from, to]: readonly [number, number], fraction: number): number {
+  return from * (1 - fraction) + to * fraction;
+}
+
+/** Mass of a side: the integral of its density; a side without width is a unit mass. */
+export function massOf(width: number, density: readonly [number, number]): number {
+  return width === 0 ? 1 : (width * (density[0] + density[1])) / 2;
 }

@@ -4,6 +4,9 @@ export interface FilamentPair {
   slope: number;
 }
 
+/** Relative difference of the two means below which series take over; they leave out less than 2e-14 of the terms that they stand for. */
+const NEARLY_EQUAL = 0.06;
+
 /**
  * Writes M/µ0 and, where `withSlope`, (dM/dz)/µ0 of two coaxial filaments into `result`: radius r of the smaller, r + δ of the greater, axial
  * offset z, all in m. Coincident filaments (δ = z = 0) have no finite value.
@@ -39,8 +42,7 @@ export function filamentPair(
   let c = product / (4 * a);
   let sum = c * c;
   let weight = 2;
-  // Quadratic convergence: at 1e-7 the next mean is off by (a − g)²/16a², and the c² after the next is nothing.
-  while (a - g > 1e-7 * a) {
+  while (a - g > NEARLY_EQUAL * a) {
     c = (a - g) / 2;
     const mean = (a + g) / 2;
     g = Math.sqrt(a * g);
@@ -48,12 +50,15 @@ export function filamentPair(
     sum += weight * c * c;
     weight *= 2;
   }
-  const mean = (a + g) / 2;
-  c = (c * c) / (4 * mean);
-  sum += weight * c * c;
-  result.mutual = ((Math.PI / 2) * sum) / mean;
+  // The rest of the sequence in x = c/a of its next term: Σ 2ⁿ⁻¹ cₙ² and the limit, DLMF 19.5.1 and 19.8.6 expanded.
+  const inverse = 2 / (a + g);
+  c = (c * c * inverse) / 4;
+  const x2 = c * inverse * (c * inverse);
+  sum += weight * c * c * (1 + x2 * (1 / 8 + x2 * (1 / 16 + x2 * (41 / 1024))));
+  const inverseMean = inverse * (1 + x2 * (1 / 4 + x2 * (9 / 64 + x2 * (25 / 256 + x2 * (1225 / 16384)))));
+  result.mutual = (Math.PI / 2) * sum * inverseMean;
   if (!withSlope) return;
   result.slope =
-    ((-Math.PI / 4) * axialOffset_m * ((product * product) / 2 - (greatest2 + least2) * sum)) /
-    (mean * greatest2 * least2);
+    ((-Math.PI / 4) * axialOffset_m * inverseMean * ((product * product) / 2 - (greatest2 + least2) * sum)) /
+    (greatest2 * least2);
 }

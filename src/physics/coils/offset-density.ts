@@ -120,8 +120,9 @@ function foldedBox(length: number, distance: number): FoldedPiece[] {
 }
 
 /**
- * Both lengths count, and the trapezoid reaches over the origin. Its corners lie at `distance` ± (most ± least)/2. Each is kept as a rounded sum and what rounding left over, so
- * that the width between two of them is right however close they are, and the densities are summed from those widths.
+ * Both lengths count, and the trapezoid reaches over the origin. Its corners lie at `distance` ± (most ± least)/2; each is kept as
+ * a rounded sum and what rounding left over, so that the width between two of them is right however close they are, and the
+ * densities are summed from those widths: the odd one is right however small `distance` is.
  */
 function foldedTrapezoid(most: number, least: number, distance: number): FoldedPiece[] {
   const outer = exactSum(most / 2, least / 2);

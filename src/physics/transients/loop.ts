@@ -1,7 +1,8 @@
 import type { FluxCharacteristic } from '../characteristic.ts';
 import { InvalidQuantity } from '../invalid-quantity.ts';
-import { type Clock, type ClockEnd, linearClock, panelClock, standingClock } from './clock.ts';
+import { type Clock, type ClockEnd, linearClock, standingClock } from './clock.ts';
 import { type Course, HORIZON_DECAY } from './course.ts';
+import { panelClock } from './panel-clock.ts';
 import type { StaticPath } from './path.ts';
 import { type Drive, driveFrom, settledCurrent } from './unit-response.ts';
 

@@ -2,7 +2,7 @@ import type { FluxCharacteristic } from '../characteristic.ts';
 import { type Collocation, radauCollocation, seriesThrough } from '../numerics/collocation.ts';
 import { type LegendreSeries, seriesIntegral, seriesSlope } from '../numerics/legendre-series.ts';
 import { solveInPlace } from '../numerics/linear-solve.ts';
-import { bounded } from './clock.ts';
+import { bounded } from './panel.ts';
 
 /** Where a saturating inductor and its snubber stand: u = capacitor voltage − source, which tends to zero as the current does. */
 export interface SnubberState {

@@ -1,10 +1,10 @@
-import type { FluxCharacteristic } from '../characteristic.ts';
+import { type FluxCharacteristic, methodAt } from '../characteristic.ts';
 import { InvalidQuantity } from '../invalid-quantity.ts';
 import type { Method } from '../method.ts';
-import { bounded } from './clock.ts';
 import { type Course, outOfRange } from './course.ts';
 import { linearSnubberCourse } from './linear-snubber.ts';
 import { loopCourse } from './loop.ts';
+import { bounded } from './panel.ts';
 import { type Path, type StaticPath, staticPath } from './path.ts';
 import { saturatingSnubberCourse } from './saturating-snubber.ts';
 
@@ -93,6 +93,13 @@ export const DEFAULT_SAMPLES = 200;
  *
  * | quantity | domain | worst relative error | against |
  * |---|---|---|---|
+ * | times, energies, final current; loops of constant inductance | 1e-12 to 1e6 H, 0 to 1e7 Ω, 0.7 V to 1 MV | 2e-15 | mpmath, 50 digits |
+ * | the same by quadrature | the same | 2e-15 | the same |
+ * | times, energies; saturating loops | from 50 knee currents down, L_d(0)/L_d(∞) to 2e9 | 5e-15 | quadrature over i, mpmath |
+ * | times and peak; snubbers of constant inductance | R²C/L from 0 to 4e18, through critical | 1e-15 | mpmath, 80 digits |
+ * | times and peak; the same stepped through | the same | 2e-14 | the same |
+ * | energies of both | the same | 4e-13 | the same |
+ * | current, voltage, peak; saturating snubbers | 7 cases to R²C/L of 4 | 2e-14 of the largest | Taylor integrator, mpmath |
  */
 export function transient(inductor: FluxCharacteristic, request: TransientRequest): Transient {
   check(inductor, request);
@@ -100,7 +107,7 @@ export function transient(inductor: FluxCharacteristic, request: TransientReques
   const source_V = request.source_V ?? 0;
   const initial_J = inductor.energy_J(initialCurrent_A);
   if (!Number.isFinite(initial_J)) throw outOfRange();
-  const { course, path, method } = courseOf(inductor, request, initialCurrent_A, source_V);
+  const { course, path, solution } = courseOf(inductor, request, initialCurrent_A, source_V);
   const end = course.at(course.horizon_s);
 
   const delivered_J = source_V * course.charge;
@@ -109,14 +116,15 @@ export function transient(inductor: FluxCharacteristic, request: TransientReques
   const path_J = path.constantVoltage_V * course.charge + path.resistance_ohm * course.square + capacitor_J;
   const final_J = inductor.energy_J(bounded(end.current_A, inductor.maximumCurrent_A));
   const residual_J = initial_J - winding_J - path_J + delivered_J - final_J;
+  const waveform = waveformOf(course, request.samples ?? DEFAULT_SAMPLES);
   const answer = {
     peakVoltage_V: course.peakVoltage_V,
     timeToSafe_s: course.timeToSafe_s,
     timeToZero_s: course.timeToZero_s,
     finalCurrent_A: end.current_A,
     energy: { initial_J, delivered_J, winding_J, path_J, capacitor_J, final_J, residual_J },
-    waveform: waveformOf(course, request.samples ?? DEFAULT_SAMPLES),
-    method,
+    waveform,
+    method: methodOf(inductor, largestCurrent(inductor, waveform.current_A), solution),
   };
   if (!isRepresentable(answer)) throw outOfRange();
   return answer;
@@ -154,12 +162,18 @@ interface PathTerms {
   readonly capacitance_F: number;
 }
 
+/** How the course is calculated, for the answer's method. */
+interface Solution {
+  readonly name: string;
+  readonly references: readonly string[];
+}
+
 function courseOf(
   inductor: FluxCharacteristic,
   request: TransientRequest,
   initialCurrent_A: number,
   source_V: number,
-): { course: Course; path: PathTerms; method: Method } {
+): { course: Course; path: PathTerms; solution: Solution } {
   const { windingResistance_ohm } = request;
   const isLinear = inductor.kind === 'linear';
   const path = request.event === 'interrupt' ? request.path : undefined;
@@ -171,13 +185,7 @@ function courseOf(
         ? linearSnubberCourse(inductor.differentialInductance_H(0), loop, request)
         : saturatingSnubberCourse(inductor, loop, request),
       path: { constantVoltage_V: 0, resistance_ohm: pathResistance_ohm, capacitance_F },
-      method: methodOf(
-        inductor,
-        isLinear
-          ? 'series RLC circuit, closed form through critical damping'
-          : 'series circuit of a saturating inductance, Radau IIA collocation of order 23',
-        isLinear ? [] : ['E. Hairer, G. Wanner, Solving Ordinary Differential Equations II, 2nd ed. (1996), IV.5'],
-      ),
+      solution: isLinear ? CLOSED_RLC : STEPPED_RLC,
     };
   }
   const taken: StaticPath | null = path === undefined ? null : staticPath(path);
@@ -188,20 +196,32 @@ function courseOf(
       resistance_ohm: taken?.resistance_ohm ?? 0,
       capacitance_F: 0,
     },
-    method: methodOf(
-      inductor,
-      isLinear ? 'RL circuit, closed form' : 'RL circuit of a saturating inductance, quadrature of dλ/(net voltage)',
-      [],
-    ),
+    solution: isLinear ? CLOSED_RL : QUADRATURE_RL,
   };
 }
 
-function methodOf({ method }: FluxCharacteristic, name: string, references: readonly string[]): Method {
+const CLOSED_RL: Solution = { name: 'RL circuit, closed form', references: [] };
+const QUADRATURE_RL: Solution = {
+  name: 'RL circuit of a saturating inductance, quadrature of dλ/(net voltage)',
+  references: [],
+};
+const CLOSED_RLC: Solution = { name: 'series RLC circuit, closed form through critical damping', references: [] };
+const STEPPED_RLC: Solution = {
+  name: 'series circuit of a saturating inductance, Radau IIA collocation of order 23',
+  references: ['E. Hairer, G. Wanner, Solving Ordinary Differential Equations II, 2nd ed. (1996), IV.5'],
+};
+
+function largestCurrent({ maximumCurrent_A }: FluxCharacteristic, current_A: readonly number[]): number {
+  return current_A.reduce((largest, i) => Math.max(largest, Math.abs(bounded(i, maximumCurrent_A))), 0);
+}
+
+function methodOf(inductor: FluxCharacteristic, largestCurrent_A: number, solution: Solution): Method {
+  const { name, references, relativeError, validity } = methodAt(inductor, largestCurrent_A);
   return {
-    name: `${name}; ${method.name}`,
-    references: [...references, ...method.references],
-    relativeError: method.relativeError,
-    validity: `lumped circuit with constant resistances; the winding's own capacitance, hysteresis and eddy currents in the core, and the switching time of diode or clamp are neglected; ${method.validity}`,
+    name: `${solution.name}; ${name}`,
+    references: [...solution.references, ...references],
+    relativeError,
+    validity: `lumped circuit with constant resistances; the winding's own capacitance, hysteresis and eddy currents in the core, and the switching time of diode or clamp are neglected; relativeError is that of the flux characteristic at the largest current; ${validity}`,
   };
 }
 

@@ -1,7 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { radauCollocation, seriesThrough } from '../../../src/physics/numerics/collocation.ts';
-import { seriesIntegral, seriesSlope, seriesValue } from '../../../src/physics/numerics/legendre-series.ts';
-import { solveInPlace } from '../../../src/physics/numerics/linear-solve.ts';
+import { radauCollocation } from '../../../src/physics/numerics/collocation.ts';
 
 describe('Radau IIA collocation', () => {
   // E. Hairer and G. Wanner, Solving Ordinary Differential Equations II, tables IV.5.5 and IV.5.6.
@@ -41,43 +39,6 @@ describe('Radau IIA collocation', () => {
         });
       }
     }
-  });
-});
-
-describe('a Legendre series through the nodes', () => {
-  it('gives value, slope and integral of a smooth function', () => {
-    const rule = radauCollocation(16);
-    const series = seriesThrough(
-      rule,
-      rule.nodes.map((x) => Math.exp(x)),
-    );
-    for (const x of [-1, -0.7, 0, 0.31, 1]) {
-      expect(Math.abs(seriesValue(series, x) - Math.exp(x))).toBeLessThan(2e-13);
-      expect(Math.abs(seriesSlope(series, x) - Math.exp(x))).toBeLessThan(2e-11);
-      expect(Math.abs(seriesIntegral(series, x) - (Math.exp(x) - Math.exp(-1)))).toBeLessThan(2e-13);
-    }
-  });
-
-  it('works with a single term', () => {
-    const constant = new Float64Array([3]);
-    expect(seriesValue(constant, 0.5)).toBe(3);
-    expect(seriesSlope(constant, 0.5)).toBe(0);
-    expect(seriesIntegral(constant, 0.5)).toBe(4.5);
-  });
-});
-
-describe('a small linear system', () => {
-  it('is solved with pivoting', () => {
-    // The first pivot is zero; solution (1, −2, 3).
-    const matrix = new Float64Array([0, 2, 1, 1, -1, 4, 3, 5, -2]);
-    const vector = new Float64Array([-1, 15, -13]);
-    expect(solveInPlace(matrix, vector)).toBe(true);
-    expectClose(vector, [1, -2, 3]);
-  });
-
-  it('says that a singular one has no solution', () => {
-    expect(solveInPlace(new Float64Array([1, 2, 2, 4]), new Float64Array([1, 1]))).toBe(false);
-    expect(solveInPlace(new Float64Array([Number.NaN, 2, 2, 4]), new Float64Array([1, 1]))).toBe(false);
   });
 });
 

@@ -183,7 +183,7 @@ describe('the energy audit', () => {
           expect(error.pointer).toMatch(/^\/(path\/(resistance_ohm|forwardDrop_V|clamp_V)|source_V|until_s)$/);
         }
       }),
-      { seed: 20240611, numRuns: 150 },
+      { seed: 20240611, numRuns: 100 },
     );
   });
 
@@ -202,7 +202,7 @@ describe('the energy audit', () => {
           expect(error.pointer).toBe('/until_s');
         }
       }),
-      { seed: 20240612, numRuns: 250 },
+      { seed: 20240612, numRuns: 150 },
     );
   });
 
@@ -423,7 +423,7 @@ describe('what cannot be', () => {
   });
 
   it('never gives NaN or Infinity, at the ends of the range', () => {
-    const extremes = [1e-308, 1e-150, 1, 1e150, 1e308];
+    const extremes = [1e-308, 1e-150, 1, 1e308];
     const paths = (value: number): Path[] => [
       { kind: 'resistor', resistance_ohm: value },
       { kind: 'diode', forwardDrop_V: value },
@@ -432,7 +432,7 @@ describe('what cannot be', () => {
       { kind: 'snubber', resistance_ohm: 1, capacitance_F: value },
     ];
     let answered = 0;
-    for (const inductance_H of [1e-308, 1e-12, 1e6, 1e308]) {
+    for (const inductance_H of [1e-308, 1e-12, 1e308]) {
       for (const value of extremes) {
         for (const path of paths(value)) {
           for (const initialCurrent_A of extremes) {

@@ -9,6 +9,8 @@ export interface Observed {
   readonly value: number;
   readonly unit: string;
   readonly standardUncertainty: number;
+  /** the true value is at least this: the sweep ended before the quantity was reached */
+  readonly atLeast?: boolean;
 }
 
 /** One observation, decided. */
@@ -46,7 +48,7 @@ export function judge(observation: Observation, risk: number, requestUncertainty
   return {
     ...common,
     outcome,
-    observed: { value, unit, standardUncertainty },
+    observed: { value, unit, standardUncertainty, ...(observation.atLeast && { atLeast: true }) },
     margin: decided.margin,
     conformanceProbability: decided.conformanceProbability,
     detail: sentence(observation, { ...decided, value, standardUncertainty, outcome, doubt, risk }),

@@ -24,4 +24,18 @@ export interface Tables {
     /** JSON */
     value: string;
   };
+  units: {
+    position: GeneratedAlways<number>;
+    lot: string;
+    serial: string;
+    measured_at: string;
+    outcome: string;
+    digest: string;
+    /** as it was sent, JSON */
+    unit: string;
+    /** as it was judged, JSON */
+    judged: string;
+  };
+  unit_counts: { lot: string; outcome: string; units: number };
+  rollups: { lot: string; rig: string; day: string; quantity: string; moments: string; bins: string };
 }

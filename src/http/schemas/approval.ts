@@ -11,7 +11,12 @@ export const VerdictSchema = z.enum(['approve', 'reject', 'refer']);
 const judgement = {
   outcome: z.enum(['pass', 'fail', 'inconclusive']),
   observed: z
-    .object({ value: z.number(), unit: z.string(), standardUncertainty: z.number() })
+    .object({
+      value: z.number(),
+      unit: z.string(),
+      standardUncertainty: z.number(),
+      atLeast: z.boolean().exactOptional(),
+    })
     .exactOptional()
     .meta({ description: 'absent where the quantity could not be had; detail says why' }),
   limit: z.object({ lower: z.number().exactOptional(), upper: z.number().exactOptional() }),

@@ -27,7 +27,7 @@ export const calculationOf = (name: CalculationName): Calculation<object, object
   CALCULATIONS[name] as unknown as Calculation<object, object>;
 
 const POSITIVE = /^(turns|relativePermeability|initialPermeability)$|_(m|m2|m3|H|ohm|F|Hz|K_per_W)$/;
-const SIGNED = /^axial/;
+const SIGNED = /^(axial|inductanceMatrix)/;
 
 /**
  * What a number at a pointer must stay above, by its field's name: dimensions, inductances, resistances and the like above zero, of

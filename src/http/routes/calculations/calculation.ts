@@ -1,6 +1,6 @@
 import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
-import type { z } from 'zod';
+import { z } from 'zod';
 import { cautionsOf, type Hazards } from '../../../approval/cautions.ts';
 import { resolveMaterials } from '../../../approval/references.ts';
 import type { Registry } from '../../../approval/registry.ts';
@@ -25,7 +25,8 @@ interface Description<Request extends UncertaintyFields, Answer extends object> 
   readonly summary: string;
   /** Strict, and spread with `uncertaintyFields`. */
   readonly request: z.ZodType<Request>;
-  readonly answer: z.ZodObject & z.ZodType<unknown, Answer>;
+  /** One form, or several that are told apart by their fields. */
+  readonly answer: (z.ZodObject | z.ZodUnion<readonly z.ZodObject[]>) & z.ZodType<unknown, Answer>;
   readonly examples: readonly NoInfer<Request>[];
   readonly name: CalculationName;
   readonly calculation: Calculation<NoInfer<Request>, NoInfer<Answer>>;
@@ -38,7 +39,9 @@ export function calculation<Request extends UncertaintyFields, Answer extends ob
   { registry, simulator }: CalculationPorts,
   c: Description<Request, Answer>,
 ): void {
-  const Response = c.answer.extend({ uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) });
+  const added = { uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) };
+  const Response =
+    'options' in c.answer ? z.union(c.answer.options.map((form) => form.extend(added))) : c.answer.extend(added);
   app.withTypeProvider<ZodTypeProvider>().post(
     c.path,
     {

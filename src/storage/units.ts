@@ -1,0 +1,127 @@
+import type { Outcome } from '../evidence/judge.ts';
+import type { JudgedUnit, UnitQuantity } from '../evidence/judged-unit.ts';
+import { mergeRolled, NOTHING_ROLLED_UP, type Rolled, type RollupPart } from '../evidence/rollup.ts';
+import type { Recording, Rollup, UnitEntry, UnitStore } from '../evidence/unit-store.ts';
+import type { Database } from './database.ts';
+
+type Transaction = Database['db'];
+
+/** Measured units in the store's `units`, `unit_counts` and `rollups` tables. */
+export function unitStore(database: Database): UnitStore {
+  const { db } = database;
+  return {
+    // Exclusive by lot: rollups are read, merged and written, and two writers of one lot would lose each other's units.
+    record: (lot, entries, rollUp) =>
+      database.exclusive(`lot ${lot}`, async (transaction) => {
+        const recordings: Recording[] = [];
+        const added: JudgedUnit[] = [];
+        for (const entry of entries) {
+          const recording = await recordOne(transaction, lot, entry);
+          recordings.push(recording);
+          if (recording.kind === 'recorded') added.push(entry.judged);
+        }
+        await countOutcomes(transaction, lot, added);
+        await mergeIn(transaction, lot, rollUp(added));
+        return recordings;
+      }),
+
+    list: async (lot, { outcome, after = 0, limit }) => {
+      let query = db
+        .selectFrom('units')
+        .select(['position', 'unit', 'judged'])
+        .where('lot', '=', lot)
+        .where('position', '>', after);
+      if (outcome !== undefined) query = query.where('outcome', '=', outcome);
+      const rows = await query.orderBy('position').limit(limit).execute();
+      return rows.map(({ position, unit, judged }) => ({
+        position,
+        unit: JSON.parse(unit),
+        judged: JSON.parse(judged),
+      }));
+    },
+
+    counts: async (lot) => {
+      const rows = await db.selectFrom('unit_counts').select(['outcome', 'units']).where('lot', '=', lot).execute();
+      const of = (outcome: Outcome) => rows.find((row) => row.outcome === outcome)?.units ?? 0;
+      return { pass: of('pass'), inconclusive: of('inconclusive'), fail: of('fail') };
+    },
+
+    rollups: async (lots) => {
+      if (lots.length === 0) return [];
+      const rows = await db
+        .selectFrom('rollups')
+        .selectAll()
+        .where('lot', 'in', [...lots])
+        .execute();
+      return rows.map(
+        ({ moments, bins, quantity, ...row }): Rollup => ({
+          ...row,
+          quantity: quantity as UnitQuantity,
+          moments: JSON.parse(moments),
+          bins: JSON.parse(bins),
+        }),
+      );
+    },
+  };
+}
+
+async function recordOne(
+  transaction: Transaction,
+  lot: string,
+  { unit, digest, judged }: UnitEntry,
+): Promise<Recording> {
+  const inserted = await transaction
+    .insertInto('units')
+    .values({
+      lot,
+      serial: unit.serial,
+      measured_at: unit.measuredAt,
+      outcome: judged.outcome,
+      digest,
+      unit: JSON.stringify(unit),
+      judged: JSON.stringify(judged),
+    })
+    .onConflict((conflict) => conflict.columns(['lot', 'serial', 'measured_at']).doNothing())
+    .returning('position')
+    .executeTakeFirst();
+  if (inserted) return { kind: 'recorded', judged };
+  const first = await transaction
+    .selectFrom('units')
+    .select(['digest', 'judged'])
+    .where('lot', '=', lot)
+    .where('serial', '=', unit.serial)
+    .where('measured_at', '=', unit.measuredAt)
+    .executeTakeFirstOrThrow();
+  return first.digest === digest ? { kind: 'repeated', judged: JSON.parse(first.judged) } : { kind: 'conflict' };
+}
+
+async function countOutcomes(transaction: Transaction, lot: string, added: readonly JudgedUnit[]): Promise<void> {
+  for (const [outcome, { length }] of Map.groupBy(added, (judged) => judged.outcome)) {
+    await transaction
+      .insertInto('unit_counts')
+      .values({ lot, outcome, units: length })
+      .onConflict((conflict) =>
+        conflict.columns(['lot', 'outcome']).doUpdateSet((row) => ({ units: row('unit_counts.units', '+', length) })),
+      )
+      .execute();
+  }
+}
+
+async function mergeIn(transaction: Transaction, lot: string, parts: readonly RollupPart[]): Promise<void> {
+  for (const { rig, day, quantity, ...part } of parts) {
+    const key = { lot, rig, day, quantity };
+    const row = await transaction
+      .selectFrom('rollups')
+      .select(['moments', 'bins'])
+      .where((where) => where.and(key))
+      .executeTakeFirst();
+    const before: Rolled = row ? { moments: JSON.parse(row.moments), bins: JSON.parse(row.bins) } : NOTHING_ROLLED_UP;
+    const merged = mergeRolled(before, part);
+    const values = { moments: JSON.stringify(merged.moments), bins: JSON.stringify(merged.bins) };
+    await transaction
+      .insertInto('rollups')
+      .values({ ...key, ...values })
+      .onConflict((conflict) => conflict.columns(['lot', 'rig', 'day', 'quantity']).doUpdateSet(values))
+      .execute();
+  }
+}

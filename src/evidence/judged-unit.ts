@@ -4,7 +4,7 @@ import type { Method } from '../physics/method.ts';
 import type { Drawing } from './drawing.ts';
 import { type Judgement, judge, mostAdverse, type Observed, type Outcome } from './judge.ts';
 import type { Limit, Observation } from './observation.ts';
-import type { Unit } from './unit.ts';
+import { isOutOfCalibration, type Unit } from './unit.ts';
 import {
   energyMeasurement,
   inductanceMeasurement,
@@ -35,6 +35,7 @@ export interface JudgedUnit {
   readonly measuredAt: string;
   readonly rig?: string;
   readonly outcome: Outcome;
+  readonly outOfCalibration?: true;
   readonly quantities: readonly JudgedQuantity[];
 }
 
@@ -89,6 +90,7 @@ export function judgeUnit(unit: Unit, yardstick: Yardstick): JudgedUnit {
     measuredAt: unit.measuredAt,
     ...(unit.rig !== undefined && { rig: unit.rig }),
     outcome: mostAdverse(judgements).outcome,
+    ...(isOutOfCalibration(unit) && { outOfCalibration: true as const }),
     quantities,
   };
 }

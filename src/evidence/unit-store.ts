@@ -33,21 +33,26 @@ export interface Rollup extends RollupPart {
   readonly lot: string;
 }
 
-export type OutcomeCounts = Readonly<Record<Outcome, number>>;
+/** Units of a lot by outcome, and how many of them a rig out of calibration measured. */
+export type UnitCounts = Readonly<Record<Outcome, number>> & { readonly outOfCalibration: number };
+
+/** Some units of one lot, and how they roll up. */
+export interface UnitBatch {
+  readonly lot: string;
+  readonly entries: readonly UnitEntry[];
+  /** asked for those of the units that are new */
+  readonly rollUp: (added: readonly JudgedUnit[]) => readonly RollupPart[];
+}
 
 /** The port through which measured units are recorded and read. (lot, serial, measuredAt) is the key. */
 export interface UnitStore {
   /**
-   * Records entries of one lot in their order, all in one transaction: durable when the promise resolves. Counts and rollups are
-   * brought up to date in the same transaction, by what `rollUp` makes of the units that are new.
+   * Records batches in their order, all in one transaction: durable when the promise resolves. Counts and rollups are brought up to
+   * date in the same transaction, each new unit once. Answers as many recordings for each batch as it has entries.
    */
-  record(
-    lot: string,
-    entries: readonly UnitEntry[],
-    rollUp: (added: readonly JudgedUnit[]) => readonly RollupPart[],
-  ): Promise<Recording[]>;
+  record(batches: readonly UnitBatch[]): Promise<Recording[][]>;
   list(lot: string, filter: UnitFilter): Promise<RecordedUnit[]>;
-  counts(lot: string): Promise<OutcomeCounts>;
+  counts(lot: string): Promise<UnitCounts>;
   /** Every rollup of the lots. */
   rollups(lots: readonly string[]): Promise<Rollup[]>;
 }

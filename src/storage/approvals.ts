@@ -9,7 +9,7 @@ export function approvalStore(database: Database): ApprovalStore {
   const { db } = database;
   return {
     append: (make, idempotency) =>
-      database.exclusive('approvals', async (transaction) => {
+      database.exclusive(['approvals'], async (transaction) => {
         if (idempotency) {
           const repeat = await transaction
             .selectFrom('approvals')

@@ -19,9 +19,12 @@ export async function openPostgres(url: string): Promise<Database> {
     engine: 'postgres',
     db,
     write,
-    exclusive: (name, work) =>
+    exclusive: (names, work) =>
       write(async (transaction) => {
-        await sql`select pg_advisory_xact_lock(hashtext(${name}))`.execute(transaction);
+        // In one order everywhere, so that two who want the same locks cannot wait for each other.
+        for (const name of [...new Set(names)].sort()) {
+          await sql`select pg_advisory_xact_lock(hashtextextended(${name}, 0))`.execute(transaction);
+        }
         return work(transaction);
       }),
     close: () => db.destroy(),

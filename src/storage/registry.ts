@@ -20,7 +20,7 @@ export function registryStore(database: Database): Registry {
     },
 
     put: (kind, id, value, { precondition, mayReplace }) =>
-      database.exclusive(`registry ${kind} ${id}`, async (transaction) => {
+      database.exclusive([`registry ${kind} ${id}`], async (transaction) => {
         const row = await find(transaction, kind, id);
         const tag = digestOf(value);
         requirePrecondition(precondition, row?.tag);

@@ -45,7 +45,7 @@ export async function openSqlite(dataDir: string): Promise<Database> {
     db,
     write,
     // The file has one writer at a time: every write is exclusive.
-    exclusive: (_name, work) => write(work),
+    exclusive: (_names, work) => write(work),
     close: () => oneAtATime(() => db.destroy()),
   };
 }

@@ -36,6 +36,6 @@ export interface Tables {
     /** as it was judged, JSON */
     judged: string;
   };
-  unit_counts: { lot: string; outcome: string; units: number };
+  unit_counts: { lot: string; label: string; units: number };
   rollups: { lot: string; rig: string; day: string; quantity: string; moments: string; bins: string };
 }

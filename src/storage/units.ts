@@ -1,8 +1,9 @@
-import type { Outcome } from '../evidence/judge.ts';
 import type { JudgedUnit, UnitQuantity } from '../evidence/judged-unit.ts';
 import { mergeRolled, NOTHING_ROLLED_UP, type Rolled, type RollupPart } from '../evidence/rollup.ts';
-import type { Recording, Rollup, UnitEntry, UnitStore } from '../evidence/unit-store.ts';
+import type { Recording, Rollup, UnitBatch, UnitEntry, UnitStore } from '../evidence/unit-store.ts';
 import type { Database } from './database.ts';
+
+const OUT_OF_CALIBRATION = 'out-of-calibration';
 
 type Transaction = Database['db'];
 
@@ -11,19 +12,15 @@ export function unitStore(database: Database): UnitStore {
   const { db } = database;
   return {
     // Exclusive by lot: rollups are read, merged and written, and two writers of one lot would lose each other's units.
-    record: (lot, entries, rollUp) =>
-      database.exclusive(`lot ${lot}`, async (transaction) => {
-        const recordings: Recording[] = [];
-        const added: JudgedUnit[] = [];
-        for (const entry of entries) {
-          const recording = await recordOne(transaction, lot, entry);
-          recordings.push(recording);
-          if (recording.kind === 'recorded') added.push(entry.judged);
-        }
-        await countOutcomes(transaction, lot, added);
-        await mergeIn(transaction, lot, rollUp(added));
-        return recordings;
-      }),
+    record: (batches) =>
+      database.exclusive(
+        batches.map(({ lot }) => `lot ${lot}`),
+        async (transaction) => {
+          const recordings: Recording[][] = [];
+          for (const batch of batches) recordings.push(await recordBatch(transaction, batch));
+          return recordings;
+        },
+      ),
 
     list: async (lot, { outcome, after = 0, limit }) => {
       let query = db
@@ -41,9 +38,14 @@ export function unitStore(database: Database): UnitStore {
     },
 
     counts: async (lot) => {
-      const rows = await db.selectFrom('unit_counts').select(['outcome', 'units']).where('lot', '=', lot).execute();
-      const of = (outcome: Outcome) => rows.find((row) => row.outcome === outcome)?.units ?? 0;
-      return { pass: of('pass'), inconclusive: of('inconclusive'), fail: of('fail') };
+      const rows = await db.selectFrom('unit_counts').select(['label', 'units']).where('lot', '=', lot).execute();
+      const of = (label: string) => rows.find((row) => row.label === label)?.units ?? 0;
+      return {
+        pass: of('pass'),
+        inconclusive: of('inconclusive'),
+        fail: of('fail'),
+        outOfCalibration: of(OUT_OF_CALIBRATION),
+      };
     },
 
     rollups: async (lots) => {
@@ -63,6 +65,19 @@ export function unitStore(database: Database): UnitStore {
       );
     },
   };
+}
+
+async function recordBatch(transaction: Transaction, { lot, entries, rollUp }: UnitBatch): Promise<Recording[]> {
+  const recordings: Recording[] = [];
+  const added: JudgedUnit[] = [];
+  for (const entry of entries) {
+    const recording = await recordOne(transaction, lot, entry);
+    recordings.push(recording);
+    if (recording.kind === 'recorded') added.push(entry.judged);
+  }
+  await count(transaction, lot, added);
+  await mergeIn(transaction, lot, rollUp(added));
+  return recordings;
 }
 
 async function recordOne(
@@ -95,13 +110,17 @@ async function recordOne(
   return first.digest === digest ? { kind: 'repeated', judged: JSON.parse(first.judged) } : { kind: 'conflict' };
 }
 
-async function countOutcomes(transaction: Transaction, lot: string, added: readonly JudgedUnit[]): Promise<void> {
-  for (const [outcome, { length }] of Map.groupBy(added, (judged) => judged.outcome)) {
+async function count(transaction: Transaction, lot: string, added: readonly JudgedUnit[]): Promise<void> {
+  const labels = added.flatMap(({ outcome, outOfCalibration }) => [
+    outcome,
+    ...(outOfCalibration ? [OUT_OF_CALIBRATION] : []),
+  ]);
+  for (const [label, { length }] of Map.groupBy(labels, (name) => name)) {
     await transaction
       .insertInto('unit_counts')
-      .values({ lot, outcome, units: length })
+      .values({ lot, label, units: length })
       .onConflict((conflict) =>
-        conflict.columns(['lot', 'outcome']).doUpdateSet((row) => ({ units: row('unit_counts.units', '+', length) })),
+        conflict.columns(['lot', 'label']).doUpdateSet((row) => ({ units: row('unit_counts.units', '+', length) })),
       )
       .execute();
   }

@@ -22,9 +22,9 @@ export const units = (engine: Engine): Migration => ({
     await db.schema
       .createTable('unit_counts')
       .addColumn('lot', 'text', (column) => column.notNull())
-      .addColumn('outcome', 'text', (column) => column.notNull())
+      .addColumn('label', 'text', (column) => column.notNull())
       .addColumn('units', 'integer', (column) => column.notNull())
-      .addPrimaryKeyConstraint('unit_counts_key', ['lot', 'outcome'])
+      .addPrimaryKeyConstraint('unit_counts_key', ['lot', 'label'])
       .execute();
     await db.schema
       .createTable('rollups')

@@ -1,0 +1,95 @@
+import { CoilproofError } from '../errors.ts';
+import { type JudgedUnit, judgeUnit, type Yardstick } from '../evidence/judged-unit.ts';
+import type { Lot } from '../evidence/lot.ts';
+import type { Rig } from '../evidence/rig.ts';
+import { rollUp } from '../evidence/rollup.ts';
+import { onRig, type Unit } from '../evidence/unit.ts';
+import type { UnitEntry, UnitStore } from '../evidence/unit-store.ts';
+import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import { digestOf } from './record.ts';
+import { partId, type Registered, type Registry } from './registry.ts';
+
+/** What judging and recording units needs from outside. */
+export interface UnitDesk {
+  readonly registry: Registry;
+  readonly units: UnitStore;
+}
+
+/** A lot, and the drawing and conductor that its units are judged by. */
+export interface LotUnderTest {
+  readonly id: string;
+  readonly lot: Lot;
+  readonly yardstick: Yardstick;
+}
+
+/** One unit's answer: judged and recorded, now or before, or refused. */
+export type MeasuredAnswer =
+  | { readonly status: 'recorded' | 'repeated'; readonly judged: JudgedUnit }
+  | { readonly problem: CoilproofError };
+
+/** A lot with what its units are judged by. Throws `CoilproofError` `not-found`, or `unknown-reference` where its part has no drawing. */
+export async function lotUnderTest(registry: Registry, id: string): Promise<LotUnderTest> {
+  const lot = await registry.get('lot', id);
+  if (!lot) throw new CoilproofError('not-found', `No lot ${id} is registered here.`);
+  const { number, revision } = lot.value.part;
+  const part = await registry.get('part', partId(number, revision));
+  if (!part?.value.drawing) {
+    throw new CoilproofError(
+      'unknown-reference',
+      `Part ${number} revision ${revision}, of which lot ${id} is, has no drawing to judge units by.`,
+    );
+  }
+  const conductor = part.value.construction?.winding?.conductor;
+  return { id, lot: lot.value, yardstick: { drawing: part.value.drawing, ...(conductor && { conductor }) } };
+}
+
+/**
+ * Judges units of a lot and records them in one transaction; answers in their order once that is durable. A unit that cannot be
+ * judged, or that contradicts one recorded under the same serial and time, is answered as a problem, and the rest go on.
+ */
+export async function measure(
+  desk: UnitDesk,
+  { id, yardstick }: LotUnderTest,
+  units: readonly Unit[],
+): Promise<MeasuredAnswer[]> {
+  const rigs = new Map<string, Registered<Rig> | undefined>();
+  const entries: (UnitEntry | { readonly problem: CoilproofError })[] = [];
+  for (const unit of units) {
+    if (unit.rig !== undefined && !rigs.has(unit.rig)) rigs.set(unit.rig, await desk.registry.get('rig', unit.rig));
+    entries.push(judgedEntry(unit, unit.rig === undefined ? undefined : rigs.get(unit.rig)?.value, yardstick));
+  }
+  const usable = entries.filter((entry): entry is UnitEntry => 'judged' in entry);
+  const batch = { lot: id, entries: usable, rollUp: (added: readonly JudgedUnit[]) => rollUp(added, yardstick) };
+  const [recordings = []] = usable.length > 0 ? await desk.units.record([batch]) : [];
+  const remaining = recordings.values();
+  return entries.map((entry): MeasuredAnswer => {
+    if ('problem' in entry) return entry;
+    const recording = remaining.next().value;
+    if (!recording || recording.kind === 'conflict') return { problem: contradicts(entry.unit, id) };
+    return { status: recording.kind, judged: recording.judged };
+  });
+}
+
+function judgedEntry(
+  unit: Unit,
+  rig: Rig | undefined,
+  yardstick: Yardstick,
+): UnitEntry | { readonly problem: CoilproofError } {
+  if (unit.rig !== undefined && !rig) {
+    const detail = `no rig ${unit.rig} is registered`;
+    return { problem: new CoilproofError('unknown-reference', detail, [{ pointer: '/rig', detail }]) };
+  }
+  try {
+    return { unit, digest: digestOf(unit), judged: judgeUnit(rig ? onRig(unit, rig) : unit, yardstick) };
+  } catch (error) {
+    if (!(error instanceof InvalidQuantity)) throw error;
+    const { pointer, detail } = error;
+    return { problem: new CoilproofError('unusable-quantity', detail, [{ pointer, detail }]) };
+  }
+}
+
+const contradicts = ({ serial, measuredAt }: Unit, lot: string) =>
+  new CoilproofError(
+    'conflict',
+    `Unit ${serial}, measured at ${measuredAt}, is recorded in lot ${lot} with another content.`,
+  );

@@ -4,11 +4,13 @@ import type { FastifyInstance } from 'fastify';
 import { type DestinationStream, pino } from 'pino';
 import type { ApprovalDesk } from './approval/approval.ts';
 import type { Config } from './config/index.ts';
+import { groupCommit } from './evidence/group-commit.ts';
 import { createApp } from './http/app.ts';
 import { approvalStore } from './storage/approvals.ts';
 import { openPostgres } from './storage/postgres.ts';
 import { registryStore } from './storage/registry.ts';
 import { openSqlite } from './storage/sqlite.ts';
+import { unitStore } from './storage/units.ts';
 import { createSimulator } from './workers/simulation.ts';
 
 /** The service, wired: an unstarted server and what has to be disposed of after it. */
@@ -41,8 +43,9 @@ export async function compose(config: Config, overrides: Overrides = {}): Promis
     now: overrides.now ?? (() => new Date()),
     newId: overrides.newId ?? randomUUIDv7,
   };
+  const units = groupCommit(unitStore(database));
   const simulator = createSimulator();
-  const app = await createApp({ version, logger, limits: config.limits, desk, simulator });
+  const app = await createApp({ version, logger, limits: config.limits, desk, units, simulator });
   return {
     app,
     desk,

@@ -52,6 +52,8 @@ export interface UnitStore {
    */
   record(batches: readonly UnitBatch[]): Promise<Recording[][]>;
   list(lot: string, filter: UnitFilter): Promise<RecordedUnit[]>;
+  /** Position of the lot's last recorded unit; 0 where there is none. */
+  lastPosition(lot: string): Promise<number>;
   counts(lot: string): Promise<UnitCounts>;
   /** Every rollup of the lots. */
   rollups(lots: readonly string[]): Promise<Rollup[]>;

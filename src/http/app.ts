@@ -3,6 +3,7 @@ import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastif
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
 import type { Simulator } from '../approval/simulator.ts';
+import type { UnitStore } from '../evidence/unit-store.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
@@ -11,6 +12,7 @@ import { unmatched } from './plugins/unmatched.ts';
 import { sendProblem } from './problems.ts';
 import { approvals } from './routes/approvals/index.ts';
 import { calculations } from './routes/calculations/index.ts';
+import { lots } from './routes/lots/index.ts';
 import { registry } from './routes/registry/index.ts';
 import { health } from './routes/service/health.ts';
 
@@ -19,6 +21,7 @@ export interface AppOptions {
   readonly logger: NonNullable<FastifyServerOptions['loggerInstance']>;
   readonly limits: Limits;
   readonly desk: ApprovalDesk;
+  readonly units: UnitStore;
   readonly simulator: Simulator;
 }
 
@@ -35,7 +38,8 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   const app = Fastify({
     loggerInstance: options.logger,
     bodyLimit: options.limits.bodyBytes,
-    requestTimeout: options.limits.requestTimeout_ms,
+    // An idle connection ends; a long one that still sends, such as a rig's shift in one stream, goes on.
+    connectionTimeout: options.limits.requestTimeout_ms,
     handlerTimeout: options.limits.requestTimeout_ms,
     return503OnClosing: true,
     frameworkErrors: sendProblem,
@@ -67,6 +71,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   calculations(app, { registry: options.desk.registry, simulator: options.simulator });
   approvals(app, options.desk);
   registry(app, options.desk.registry);
+  lots(app, { registry: options.desk.registry, units: options.units });
   app.get('/openapi.json', { schema: { hide: true } }, async () => app.swagger());
   return app;
 }

@@ -1,9 +1,9 @@
 import type { FastifyError, FastifyReply, FastifyRequest } from 'fastify';
 import { hasZodFastifySchemaValidationErrors } from 'fastify-type-provider-zod';
 import { z } from 'zod';
-import { CoilproofError, ERROR_CATALOGUE, type ErrorCode, type FieldError } from '../errors.ts';
+import { CoilproofError, ERROR_CATALOGUE, type ErrorCode } from '../errors.ts';
 import { InvalidQuantity } from '../physics/invalid-quantity.ts';
-import { fieldErrors, type SchemaIssue } from './schema-issues.ts';
+import { fieldErrors, type SchemaIssue, summarise } from './schema-issues.ts';
 
 /** RFC 9457 problem details, the one body of every error. */
 export const Problem = z
@@ -100,12 +100,6 @@ function fromValidation(
 
 const pathOf = (instancePath: string): string[] => (instancePath === '/' ? [] : instancePath.slice(1).split('/'));
 
-const summarise = (fields: readonly FieldError[]): string =>
-  fields
-    .slice(0, 3)
-    .map(({ pointer, detail }) => `${pointer || 'the body'}: ${detail}`)
-    .join('; ') + (fields.length > 3 ? `; and ${fields.length - 3} more` : '');
-
 /** The one way an error leaves the service. */
 export function sendProblem(error: unknown, request: FastifyRequest, reply: FastifyReply): FastifyReply {
   const problem = toCoilproofError(error, request);
@@ -118,12 +112,15 @@ export function sendProblem(error: unknown, request: FastifyRequest, reply: Fast
     .code(status)
     .type('application/problem+json')
     .serializer((body: unknown) => JSON.stringify(body))
-    .send({
-      type: `urn:coilproof:problem:${problem.code}`,
-      title: ERROR_CATALOGUE[problem.code].title,
-      status,
-      detail: problem.message,
-      instance: `urn:coilproof:request:${request.id}`,
-      ...(problem.fields.length > 0 && { errors: problem.fields }),
-    });
+    .send(problemBody(problem, request.id));
 }
+
+/** An error as problem details. */
+export const problemBody = (problem: CoilproofError, requestId: string): z.input<typeof Problem> => ({
+  type: `urn:coilproof:problem:${problem.code}`,
+  title: ERROR_CATALOGUE[problem.code].title,
+  status: STATUS[problem.code],
+  detail: problem.message,
+  instance: `urn:coilproof:request:${requestId}`,
+  ...(problem.fields.length > 0 && { errors: [...problem.fields] }),
+});

@@ -60,3 +60,10 @@ function closestForm(forms: readonly (readonly SchemaIssue[])[]): readonly Schem
 function valueAt(body: unknown, path: readonly PropertyKey[]): unknown {
   return path.reduce<unknown>((value, key) => (value as Record<PropertyKey, unknown> | null | undefined)?.[key], body);
 }
+
+/** The first few errors in one line. */
+export const summarise = (fields: readonly FieldError[]): string =>
+  fields
+    .slice(0, 3)
+    .map(({ pointer, detail }) => `${pointer || 'the body'}: ${detail}`)
+    .join('; ') + (fields.length > 3 ? `; and ${fields.length - 3} more` : '');

@@ -37,6 +37,17 @@ export function unitStore(database: Database): UnitStore {
       }));
     },
 
+    lastPosition: async (lot) => {
+      const row = await db
+        .selectFrom('units')
+        .select('position')
+        .where('lot', '=', lot)
+        .orderBy('position', 'desc')
+        .limit(1)
+        .executeTakeFirst();
+      return row?.position ?? 0;
+    },
+
     counts: async (lot) => {
       const rows = await db.selectFrom('unit_counts').select(['label', 'units']).where('lot', '=', lot).execute();
       const of = (label: string) => rows.find((row) => row.label === label)?.units ?? 0;

@@ -22,6 +22,7 @@ export async function openapi(app: FastifyInstance, version: string): Promise<vo
       },
       tags: [
         { name: 'approval', description: 'may this part go in?' },
+        { name: 'evidence', description: 'what rigs measured, unit by unit and lot by lot' },
         { name: 'registry', description: 'materials, rigs, released parts, lots' },
         { name: 'calculation', description: 'nothing stored' },
         { name: 'service', description: 'health, metrics, documents' },

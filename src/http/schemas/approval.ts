@@ -8,7 +8,8 @@ import { UncertaintyMap } from './uncertainty.ts';
 
 export const VerdictSchema = z.enum(['approve', 'reject', 'refer']);
 
-const judgement = {
+/** What every judgement answers with. */
+export const judgement = {
   outcome: z.enum(['pass', 'fail', 'inconclusive']),
   observed: z
     .object({

@@ -7,6 +7,7 @@ import { PartSchema } from '../../schemas/approval-request.ts';
 import { InlineMaterialSchema } from '../../schemas/core.ts';
 import { LotSchema, RigSchema } from '../../schemas/registry.ts';
 import { identifier, text } from '../../schemas/text.ts';
+import { LotParams } from '../lots/parameters.ts';
 import { documentRoutes } from './document.ts';
 import { EXAMPLE_LOT, EXAMPLE_MATERIAL, EXAMPLE_PART, EXAMPLE_RIG } from './examples.ts';
 import { listParts } from './list-parts.ts';
@@ -62,10 +63,10 @@ export function registry(app: FastifyInstance, store: Registry): void {
   });
   documentRoutes(app, store, {
     kind: 'lot',
-    path: '/v1/lots/:id',
+    path: '/v1/lots/:lot',
     name: 'Lot',
-    params: ById,
-    idOf: ({ id }) => id,
+    params: LotParams,
+    idOf: ({ lot }) => lot,
     body: LotSchema,
     answer: LotSchema,
     toValue: (_params, body) => body,

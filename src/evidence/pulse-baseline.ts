@@ -1,0 +1,162 @@
+/**
+ * What a channel reads where nothing happens: its noise, its digitising step, and the quiet part of a pulse.
+ */
+
+/** A channel's noise as far as the samples show it. */
+export interface ChannelNoise {
+  /** standard deviation of a sample, the digitising step's part included */
+  readonly deviation: number;
+  /** digitising step; 0 where none shows */
+  readonly step: number;
+  /** standard uncertainty that averaging does not take away: of a mean that noise too small to cross steps leaves between two of them */
+  readonly bias: number;
+}
+
+/** Of a normal distribution: median of |x| in standard deviations (the 75 % quantile). */
+const MEDIAN_OF_NORMAL = 0.6744897501960817;
+/** Up to so many samples' second differences are looked at: enough for 2 % of their median. */
+const LOOKED_AT = 4096;
+
+/**
+ * Noise of a channel from the median second difference of its samples, which neither a slope nor a few edges change, and its digitising step.
+ */
+export function noiseOf(time: Float64Array, values: Float64Array): ChannelNoise {
+  const step = digitisingStep(values);
+  const stride = Math.max(1, Math.floor((values.length - 2) / LOOKED_AT));
+  const differences: number[] = [];
+  for (let k = 1; k + 1 < values.length; k += stride) {
+    const a = (time[k + 1]! - time[k]!) / (time[k + 1]! - time[k - 1]!);
+    const difference = values[k]! - a * values[k - 1]! - (1 - a) * values[k + 1]!;
+    differences.push(Math.abs(difference) / Math.sqrt(1 + a * a + (1 - a) ** 2));
+  }
+  differences.sort((x, y) => x - y);
+  const spread = differences[differences.length >> 1]! / MEDIAN_OF_NORMAL;
+  return {
+    deviation: Math.max(spread, step / Math.sqrt(12)),
+    step,
+    bias: quantisationBias(step, Math.sqrt(Math.max(spread ** 2 - step ** 2 / 12, 0))),
+  };
+}
+
+/**
+ * Root mean square over where the true value lies of the mean error of quantised samples with normal noise before the quantiser: the
+ * first term of its Fourier series, and at most step/√12 (B. Widrow, I. Kollár, Quantization Noise, 2008, from memory).
+ */
+function quantisationBias(step: number, noise: number): number {
+  if (step === 0) return 0;
+  const first = (step / (Math.PI * Math.SQRT2)) * Math.exp(-2 * (Math.PI * (noise / step)) ** 2);
+  return Math.min(first, step / Math.sqrt(12));
+}
+
+/** Part of a step that rounding in the numbers' text may leave. */
+const OFF_GRID = 0.02;
+/** Values that are this close are the same, in parts of the largest. */
+const ROUNDING = 1e-9;
+/** So many different neighbours are needed to tell a grid from chance. */
+const NEIGHBOURS = 4;
+
+/** The least difference of neighbouring samples, where all differences are multiples of it; else 0. */
+function digitisingStep(values: Float64Array): number {
+  let largest = 0;
+  for (const value of values) largest = Math.max(largest, Math.abs(value));
+  let step = Number.POSITIVE_INFINITY;
+  for (let k = 1; k < values.length; k++) {
+    const difference = Math.abs(values[k]! - values[k - 1]!);
+    if (difference > ROUNDING * largest && difference < step) step = difference;
+  }
+  let counted = 0;
+  for (let k = 1; k < values.length; k++) {
+    const difference = Math.abs(values[k]! - values[k - 1]!);
+    if (difference <= ROUNDING * largest) continue;
+    counted++;
+    const steps = difference / step;
+    if (Math.abs(steps - Math.round(steps)) > OFF_GRID) return 0;
+  }
+  return counted >= NEIGHBOURS ? step : 0;
+}
+
+/** Samples at one end of a pulse where voltage and current stand still at what they read at zero. */
+export interface QuietPart {
+  readonly count: number;
+  readonly voltage: number;
+  readonly current: number;
+}
+
+/** Fewest samples of a quiet part. */
+const FEWEST_QUIET = 4;
+/** A sample further from the mean so far, in standard deviations, is no longer quiet. */
+const OUTSIDE = 6;
+/** A slope of more standard errors than this is one. */
+const SLOPING = 4;
+/** A level above this part of the pulse's largest is not an offset but the pulse. */
+const LARGEST_OFFSET = 0.1;
+
+/**
+ * The quiet part at a pulse's start, or with `fromEnd` at its end; null where there is none. It ends where voltage or current
+ * leaves its noise (the voltage does so at once, the current may take long to show), and is shortened until neither slopes. A level
+ * above a tenth of the largest voltage or current is not taken for an offset.
+ */
+export function quietPart(
+  voltage: Float64Array,
+  current: Float64Array,
+  noise: { readonly voltage: ChannelNoise; readonly current: ChannelNoise },
+  fromEnd = false,
+): QuietPart | null {
+  const length = voltage.length;
+  const at = (k: number) => (fromEnd ? length - 1 - k : k);
+  const largest = { voltage: largestOf(voltage), current: largestOf(current) };
+  const band = {
+    voltage: OUTSIDE * noise.voltage.deviation + ROUNDING * largest.voltage,
+    current: OUTSIDE * noise.current.deviation + ROUNDING * largest.current,
+  };
+  let count = 0;
+  for (let [v, i] = [0, 0]; count < length; count++) {
+    const [nextV, nextI] = [voltage[at(count)]!, current[at(count)]!];
+    if (count > 0 && (Math.abs(nextV - v) > band.voltage || Math.abs(nextI - i) > band.current)) break;
+    v += (nextV - v) / (count + 1);
+    i += (nextI - i) / (count + 1);
+  }
+  const sloping = (values: Float64Array, rounding: number) => slopes(count, (k) => values[at(k)]!, rounding);
+  while (
+    count >= FEWEST_QUIET &&
+    (sloping(voltage, ROUNDING * largest.voltage) || sloping(current, ROUNDING * largest.current))
+  ) {
+    count = Math.floor(0.7 * count);
+  }
+  if (count < FEWEST_QUIET) return null;
+  const mean = (values: Float64Array) => {
+    let sum = 0;
+    for (let k = 0; k < count; k++) sum += values[at(k)]!;
+    return sum / count;
+  };
+  const part = { count, voltage: mean(voltage), current: mean(current) };
+  const isOffset =
+    Math.abs(part.voltage) <= LARGEST_OFFSET * largest.voltage &&
+    Math.abs(part.current) <= LARGEST_OFFSET * largest.current;
+  return isOffset ? part : null;
+}
+
+function largestOf(values: Float64Array): number {
+  let largest = 0;
+  for (const value of values) largest = Math.max(largest, Math.abs(value));
+  return largest;
+}
+
+/** Whether the first `count` values slope by more than chance; a change within `rounding` is none. */
+function slopes(count: number, value: (k: number) => number, rounding: number): boolean {
+  const middle = (count - 1) / 2;
+  let mean = 0;
+  for (let k = 0; k < count; k++) mean += value(k) / count;
+  let moment = 0;
+  let squares = 0;
+  for (let k = 0; k < count; k++) {
+    const difference = value(k) - mean;
+    moment += (k - middle) * difference;
+    squares += difference * difference;
+  }
+  const spread = (count * (count * count - 1)) / 12; // Σ (k − middle)²
+  const slope = moment / spread;
+  if (Math.abs(slope) * count <= rounding) return false;
+  const scatter = Math.max(squares - slope * moment, 0) / (count - 2);
+  return Math.abs(slope) > SLOPING * Math.sqrt(scatter / spread);
+}

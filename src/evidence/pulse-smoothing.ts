@@ -1,0 +1,272 @@
+import { inverse } from './pulse-cholesky.ts';
+import {
+  addLogSlopeSensitivity,
+  type Curve,
+  curveOf,
+  linkageAt,
+  logSlopeAt,
+  logSlopeTurnAt,
+  onTwiceTheIntervals,
+  sensitivityAt,
+  sensitivityOf,
+} from './pulse-curve.ts';
+import { DIFFERENCE, type Fit, fitCurve, ORDER, type Prior, type Readings, thirdDifference } from './pulse-fit.ts';
+
+/** A fit with how likely the readings are under its smoothing. */
+interface Candidate extends Fit {
+  readonly prior: Prior;
+  /** log₁₀ μ, of coefficients on one interval a unit of s */
+  readonly level: number;
+  /** −2 ln of the readings' restricted likelihood, up to a constant of the readings and the number of intervals */
+  readonly deviance: number;
+  /** estimated noise variance of a reading of weight one */
+  readonly variance: number;
+}
+
+/** The smooth curve through noisy readings, and how sure it is. */
+export interface SmoothCurve {
+  readonly curve: Curve;
+  readonly shift: number;
+  /** of the coefficients and then the shift, row-major, (n + 1)² */
+  readonly covariance: Float64Array;
+  /** estimated noise variance of a reading of weight one */
+  readonly variance: number;
+  /** parameters that the readings decide rather than the prior */
+  readonly effectiveParameters: number;
+}
+
+/** From so stiff that f is a quadratic to so soft that readings a thousandth of 12 bit noisy decide every coefficient. */
+const STIFFEST = -2;
+const SOFTEST = -16;
+/** A likelihood e¹⁰ below the best one ends the search, half that is too little to count. */
+const HOPELESS = 20;
+const NEGLIGIBLE = 10;
+/** Residuals above this many times the noise variance known beforehand mean that the search has not come to the curve yet. */
+const MISFIT = 1.5;
+
+const INTERVALS = 40;
+const MOST_INTERVALS = 160;
+
+/**
+ * Smooths readings: f = ln(di/dλ) is taken as a random function whose third derivative is white noise, and everything else follows from the
+ * likelihood of the readings. That is a penalised spline whose smoothing is chosen by restricted maximum likelihood (G. Wahba, Ann. Statist. 13
+ * (1985) 1378-1402; S. N. Wood, J. R. Statist. Soc. B 73 (2011) 3-36), linearised at each fit; over the smoothings that the likelihood leaves
+ * open the curves are averaged by it, so that the covariance has both the noise's part, the smoothing's bias as its prior has it (D. Nychka,
+ * J. Amer. Statist. Assoc. 83 (1988) 1134-1143) and what is open about the smoothing. References from memory.
+ *
+ * A knee between two straight parts needs softness in one place alone. The roughness that the first fits find over s is therefore given
+ * back as the prior's own, and kept where the likelihood rises by it.
+ *
+ * `noiseVariance`: of a reading of weight one, known beforehand, 0 where it is not; it only keeps the search going until the curve follows
+ * the readings. `shiftDeviation`: standard uncertainty of λ's zero. Null where no fit could be made.
+ */
+export function smooth(readings: Readings, noiseVariance: number, shiftDeviation: number): SmoothCurve | null {
+  const task: Task = { readings, noiseVariance, shiftDeviation };
+  let intervals = INTERVALS;
+  let start: Float64Array = new Float64Array(intervals + 3);
+  let stiffest = STIFFEST;
+  for (;;) {
+    const candidates = search(task, start, stiffest);
+    if (candidates.length === 0) return null;
+    const result = average(candidates);
+    // Where the readings decide half of what the spline can be, its knots limit it and no longer its prior.
+    const limited = 2 * result.effectiveParameters > intervals && 2 * intervals <= MOST_INTERVALS;
+    if (!limited || 4 * intervals > readings.linkage.length) return result;
+    intervals *= 2;
+    stiffest = Math.min(best(candidates).level + 2, STIFFEST);
+    start = onTwiceTheIntervals(result.curve.coefficients);
+  }
+}
+
+interface Task {
+  readonly readings: Readings;
+  readonly noiseVariance: number;
+  readonly shiftDeviation: number;
+}
+
+/** Rounds of giving the roughness back to the prior, at most. */
+const ROUNDS = 2;
+
+function search(task: Task, start: Float64Array, stiffest: number): Candidate[] {
+  const even = new Float64Array(start.length - ORDER).fill(1);
+  let candidates = scan(task, even, start, stiffest);
+  for (let round = 0; round < ROUNDS && candidates.length > 0; round++) {
+    const before = best(candidates);
+    const weights = priorWeights(average(candidates).curve);
+    const adapted = scan(task, weights, before.curve.coefficients, Math.min(before.level + 2, STIFFEST));
+    candidates = [...candidates, ...adapted];
+    if (best(candidates).deviance > before.deviance - 1) break;
+  }
+  return candidates;
+}
+
+/** Fits from stiff to soft by decades, each from the last; then half decades where it matters. */
+function scan(task: Task, weights: Float64Array, start: Float64Array, stiffest: number): Candidate[] {
+  const { readings, noiseVariance } = task;
+  const candidates: Candidate[] = [];
+  let last: Candidate | null = null;
+  let least = Number.POSITIVE_INFINITY;
+  for (let level = stiffest; level >= SOFTEST; level--) {
+    const candidate = candidateAt(task, weights, level, last?.curve.coefficients ?? start, last ?? null);
+    if (!candidate) break;
+    candidates.push(candidate);
+    last = candidate;
+    least = Math.min(least, candidate.deviance);
+    const follows = candidate.residual < MISFIT * noiseVariance * readings.linkage.length;
+    if (follows && candidate.deviance > least + HOPELESS) break;
+  }
+  const between = candidates
+    .filter(({ deviance }) => deviance < least + NEGLIGIBLE)
+    .map((near) => candidateAt(task, weights, near.level - 0.5, near.curve.coefficients, near));
+  return [...candidates, ...between.filter((candidate) => candidate !== null)];
+}
+
+function candidateAt(
+  { readings, noiseVariance, shiftDeviation }: Task,
+  weights: Float64Array,
+  level: number,
+  start: Float64Array,
+  before: Candidate | null,
+): Candidate | null {
+  const intervals = start.length - 3;
+  // ∫(f‴)² ds ≈ intervals⁵·Σ(third differences)²
+  const logSmoothing = level * Math.LN10 + 5 * Math.log(intervals);
+  const smoothing = Math.exp(logSmoothing);
+  const variance = before?.variance ?? noiseVariance;
+  const shiftPrecision = variance / (shiftDeviation * shiftDeviation);
+  const prior = { smoothing, weights, shiftPrecision };
+  const fit = fitCurve(readings, prior, start, before?.shift ?? 0);
+  if (!fit) return null;
+  const freedom = readings.linkage.length - ORDER;
+  const deviance = freedom * Math.log(fit.objective) + fit.logDeterminant - weights.length * logSmoothing;
+  return Number.isFinite(deviance) ? { ...fit, prior, level, deviance, variance: fit.objective / freedom } : null;
+}
+
+function best(candidates: readonly Candidate[]): Candidate {
+  return candidates.reduce((a, b) => (b.deviance < a.deviance ? b : a));
+}
+
+/** Width over which the roughness found is spread, in s, and the least of it beside its mean: both by trial over simulated pulses. */
+const SPREAD = 0.06;
+const LEAST_ROUGHNESS = 0.01;
+
+/** Weights of the third differences, inversely as the curve's own mean square of them around each place; geometric mean one. */
+function priorWeights({ intervals, coefficients }: Curve): Float64Array {
+  const count = coefficients.length - ORDER;
+  const width = SPREAD * intervals;
+  const rough = new Float64Array(count);
+  for (let r = 0; r < count; r++) {
+    let sum = 0;
+    let total = 0;
+    for (let q = 0; q < count; q++) {
+      const share = Math.exp(-(((r - q) / width) ** 2) / 2);
+      sum += share * thirdDifference(coefficients, q) ** 2;
+      total += share;
+    }
+    rough[r] = sum / total;
+  }
+  const mean = rough.reduce((a, b) => a + b) / count;
+  if (!(mean > 0)) return new Float64Array(count).fill(1);
+  const logs = rough.map((value) => -Math.log(value / mean + LEAST_ROUGHNESS));
+  const middle = logs.reduce((a, b) => a + b) / count;
+  return logs.map((value) => Math.exp(value - middle));
+}
+
+/** The candidates' average by likelihood, each smoothing as likely beforehand as the next on a logarithmic scale. */
+function average(candidates: readonly Candidate[]): SmoothCurve {
+  const { deviance: least } = best(candidates);
+  const counted = candidates.filter(({ deviance }) => deviance < least + NEGLIGIBLE);
+  const total = counted.reduce((sum, { deviance }) => sum + Math.exp((least - deviance) / 2), 0);
+  const size = counted[0]!.curve.coefficients.length + 1;
+  const mean = new Float64Array(size);
+  let variance = 0;
+  for (const candidate of counted) {
+    const share = Math.exp((least - candidate.deviance) / 2) / total;
+    variance += share * candidate.variance;
+    parameters(candidate).forEach((value, a) => {
+      mean[a]! += share * value;
+    });
+  }
+  const covariance = new Float64Array(size * size);
+  let effectiveParameters = 0;
+  for (const candidate of counted) {
+    const share = Math.exp((least - candidate.deviance) / 2) / total;
+    const own = inverse(candidate.factor, size);
+    const away = parameters(candidate).map((value, a) => value - mean[a]!);
+    for (let a = 0; a < size; a++) {
+      for (let b = 0; b < size; b++) {
+        covariance[a * size + b]! += share * (candidate.variance * own[a * size + b]! + away[a]! * away[b]!);
+      }
+    }
+    effectiveParameters += share * decided(candidate, own);
+  }
+  return { curve: curveOf(mean.slice(0, -1)), shift: mean[size - 1]!, covariance, variance, effectiveParameters };
+}
+
+function parameters({ curve, shift }: Fit): Float64Array {
+  const values = new Float64Array(curve.coefficients.length + 1);
+  values.set(curve.coefficients);
+  values[curve.coefficients.length] = shift;
+  return values;
+}
+
+/** The trace of the influence matrix: all parameters less those that the prior decides. */
+function decided({ curve, prior }: Candidate, inverseMatrix: Float64Array): number {
+  const size = curve.coefficients.length + 1;
+  let byPrior = prior.shiftPrecision * inverseMatrix[size * size - 1]!;
+  for (let r = 0; r < prior.weights.length; r++) {
+    let quadratic = 0;
+    for (let a = 0; a <= ORDER; a++) {
+      for (let b = 0; b <= ORDER; b++) {
+        quadratic += DIFFERENCE[a]! * DIFFERENCE[b]! * inverseMatrix[(r + a) * size + r + b]!;
+      }
+    }
+    byPrior += prior.smoothing * prior.weights[r]! * quadratic;
+  }
+  return size - byPrior;
+}
+
+/** A point of a smooth curve in coordinates of one, with relative standard uncertainties at its current. */
+export interface CurvePoint {
+  readonly linkage: number;
+  readonly current: number;
+  /** dλ/di */
+  readonly slope: number;
+  /** standard uncertainty of ln(dλ/di) at this current */
+  readonly logSlopeDeviation: number;
+  /** standard uncertainty of λ at this current */
+  readonly linkageDeviation: number;
+  /** d ln(dλ/di)/di */
+  readonly logSlopeTurn: number;
+}
+
+/** The curve at each s. */
+export function pointsAlong({ curve, covariance }: SmoothCurve, places: readonly number[]): CurvePoint[] {
+  const n = curve.coefficients.length;
+  const table = sensitivityOf(curve);
+  const row = new Float64Array(n);
+  const deviation = () => {
+    let sum = 0;
+    for (let a = 0; a < n; a++) for (let b = 0; b < n; b++) sum += row[a]! * row[b]! * covariance[a * (n + 1) + b]!;
+    return Math.sqrt(Math.max(sum, 0));
+  };
+  return places.map((s) => {
+    const linkage = linkageAt(curve, s);
+    const steepness = Math.exp(logSlopeAt(curve, s));
+    const turn = logSlopeTurnAt(curve, s);
+    const p = steepness / (1 + steepness);
+    // At given current s gives way: by −(∂i/∂c)/(2p), and f with it.
+    sensitivityAt(table, n, s, -turn / (2 * p), row);
+    addLogSlopeSensitivity(curve.intervals, s, row);
+    const logSlopeDeviation = deviation();
+    sensitivityAt(table, n, s, 1 / p, row);
+    return {
+      linkage,
+      current: 2 * s - linkage,
+      slope: 1 / steepness,
+      logSlopeDeviation,
+      linkageDeviation: deviation(),
+      logSlopeTurn: -turn / (2 * p),
+    };
+  });
+}

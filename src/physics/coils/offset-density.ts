@@ -50,21 +50,21 @@ interface Corner {
 }
 
 /**
- * The side on which `greater` has the greater radius. At the trapezoid's corners the smaller radius is known without a subtraction
+ * Offsets of the points whose radius in the second interval is the greater. At the trapezoid's corners the smaller radius is known without a subtraction
  * from the greater, in which a coil near the axis would lose its digits; between them everything is linear.
  */
 function outwardOffsets([a1, b1]: Radii, [a2, b2]: Radii, height: number): RadialPiece[] {
   const [build1, build2] = [b1 - a1, b2 - a2];
   const least = Math.min(build1, build2);
   const corners: Corner[] = [
-    { at: a2 - b1, density: least === 0 ? height : 0, lower: b1, upper: b1 },
+    { at: a2 - b1, density: 0, lower: b1, upper: b1 },
     build1 <= build2
       ? { at: a2 - a1, density: height, lower: a1, upper: b1 }
       : { at: b2 - b1, density: height, lower: b1 - build2, upper: b1 },
     build1 <= build2
       ? { at: b2 - b1, density: height, lower: a1, upper: b1 }
       : { at: a2 - a1, density: height, lower: a1, upper: a1 + build2 },
-    { at: b2 - a1, density: least === 0 ? height : 0, lower: a1, upper: a1 },
+    { at: b2 - a1, density: 0, lower: a1, upper: a1 },
   ];
   // Widths from the builds, not from differences of far corners, in which a thin winding would lose its digits.
   return [least, Math.abs(build1 - build2), least].flatMap((width, i) =>

@@ -19,8 +19,12 @@ export interface SectionAverage {
   readonly slopePerMu0: number;
 }
 
-/** Relative error aimed at on each panel; what the sum over the panels reaches was measured (see multilayer.ts, mutual.ts). */
+/**
+ * Relative error aimed at on each panel, for thick sections and for sheets and filaments, whose single integral is cheap. What the
+ * sum over the panels reaches was measured (see multilayer.ts, mutual.ts).
+ */
 const PANEL_TOLERANCE = 2e-12;
+const LINE_TOLERANCE = 1e-15;
 
 /**
  * Mutual inductance of two filaments, and where `withSlope` its derivative by their axial distance, averaged over two sections
@@ -53,11 +57,12 @@ export function averageOverSections(
   const shares = panels.map(roughly);
   const whole = shares.reduce((sum, { mutual, slope }) => ({ mutual: sum.mutual + mutual, slope: sum.slope + slope }));
   const fatness = Math.max(1 - a.innerRadius_m / a.outerRadius_m, 1 - b.innerRadius_m / b.outerRadius_m);
+  const tolerance = fatness === 0 ? LINE_TOLERANCE : PANEL_TOLERANCE;
   const sum = new PanelSum(fatness, withSlope);
   panels.forEach((panel, i) => {
     const mutualShare = shares[i]!.mutual / whole.mutual;
     const slopeShare = withSlope && whole.slope !== 0 ? shares[i]!.slope / whole.slope : 0;
-    const digits = Math.log(Math.max(1, Math.max(mutualShare, slopeShare) / PANEL_TOLERANCE));
+    const digits = Math.log(Math.max(1, Math.max(mutualShare, slopeShare) / tolerance));
     if (panel.corner) sum.addCorner(panel, digits);
     else sum.addPanel(panel, digits);
   });

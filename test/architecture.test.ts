@@ -36,7 +36,7 @@ const LIBRARIES: Record<string, RegExp> = {
   compose: /^(fastify|pino|piscina|node:.*)$/,
   main: /^close-with-grace$/,
   cli: /^node:.*$/,
-  report: /^$/,
+  report: /^echarts\/(core|charts|components|renderers)$/,
 };
 
 const files = readdirSync(SRC, { recursive: true, encoding: 'utf8' }).filter((file) => file.endsWith('.ts'));

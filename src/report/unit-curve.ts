@@ -74,6 +74,8 @@ export function unitCurve(data: UnitCurveData, { id = 'unit-curve' }: FigureOpti
     }
   }
   const points = thinned(measured, MOST_POINTS);
+  const measuredWords =
+    points.length < measured.length ? `${points.length} of ${measured.length} measured points` : 'measured';
   const values = [
     ...(initialInductance_H === undefined ? [] : [`L₀ = ${y.words(initialInductance_H, initialInductance_H / 10)}`]),
     ...dropWords(data, x.words),
@@ -82,7 +84,7 @@ export function unitCurve(data: UnitCurveData, { id = 'unit-curve' }: FigureOpti
     id,
     title,
     caption: [
-      `○ ${points.length < measured.length ? `${points.length} of ${measured.length} measured points` : 'measured'}    — curve`,
+      [...(points.length > 0 ? [`○ ${measuredWords}`] : []), ...(curve.length > 0 ? ['— curve'] : [])].join('    '),
       ...(values.length > 0 ? [values.join('    ')] : []),
     ],
     x,

@@ -193,6 +193,10 @@ describe('numbers in labels come from the data', () => {
     expect(texts).not.toContain('found');
   });
 
+  it('in the unit curve of points alone', () => {
+    expect(textsOf(unitCurve({ ...CHOKE, curve: NOTHING }))).toContain('○ measured');
+  });
+
   it('in the fan', () => {
     const texts = textsOf(FIGURES['lot-fan']!);
     for (const words of ['95 %', '75 %', 'median', '25 %', '5 %']) expect(texts).toContain(words);

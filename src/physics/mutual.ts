@@ -49,8 +49,10 @@ const COUPLING_ROUNDING = 1e-9;
  * | filaments, radii to 1e6 apart, gaps to 1e-12 radii       | 1e-14                   | 1e-13 | mpmath; closed form           |
  * | sheets and filaments, length/radius 1e-6 to 1e6, gaps to | 1e-13                   | 3e-14 | exact sheet kernel, 75 digits |
  * | 1e-12, coincident, 1e4 sizes apart                       |                         |       |                               |
- * | thick coils: nested, side by side, touching, gaps to     | 2e-11                   | 2e-10 | the same over both radii      |
+ * | thick coils: nested, side by side, touching, gaps to     | 2e-11                   | 5e-11 | the same over both radii      |
  * | 1e-9 radii, 1e4 sizes apart                              |                         |       |                               |
+ * | thick coils at random, build/radius 1e-7 to 1, radii and | 1e-10                   | 1e-9  | the sum over parts that one   |
+ * | lengths over 4 and 10 decades, overlapping too           |                         |       | of them is cut into           |
  */
 export function mutualInductance(
   primary: CoaxialCoil,

@@ -16,7 +16,11 @@ const GRADING = 3;
 const ROUNDING_ALLOWANCE = 1 + 1e-9;
 /** Relative to the radii, which are about 1: what lies inside a panel this near the origin is below 1e-15 of the whole. */
 const SMALLEST = 1e-18;
-/** Along a line through the origin the corner rule serves a panel this long. */
+/**
+ * Longest panel in the corner, relative to the greatest of the smaller radii r on it: at z = ±2ir the filaments have another
+ * singularity, which the rule of the corner does not know. Along a line through the origin that rule takes less.
+ */
+const LONGEST_CORNER = 2;
 const LONGEST_LINE_CORNER = 1e-2;
 
 /** Appends the panels of one pair of pieces: a geometric series of rectangles around the origin, so few however thin or near. */
@@ -32,7 +36,8 @@ export function cutIntoPanels(radial: RadialPiece, axial: FoldedPiece, panels: P
   if (near === 0) {
     const onLine = radial.width === 0 || axial.width === 0;
     const square = Math.min(radialEnd, axialEnd) * GRADING * ROUNDING_ALLOWANCE >= far;
-    if (onLine ? far <= LONGEST_LINE_CORNER : square) {
+    const longest = (onLine ? LONGEST_LINE_CORNER : LONGEST_CORNER) * Math.max(...radial.upper);
+    if (far <= longest && (onLine || square)) {
       panels.push({ radial, axial, corner: true });
       return;
     }

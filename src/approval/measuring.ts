@@ -6,6 +6,7 @@ import { rollUp } from '../evidence/rollup.ts';
 import { onRig, type Unit } from '../evidence/unit.ts';
 import type { UnitEntry, UnitStore } from '../evidence/unit-store.ts';
 import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import type { Part } from './part.ts';
 import { digestOf } from './record.ts';
 import { partId, type Registered, type Registry } from './registry.ts';
 
@@ -33,14 +34,32 @@ export async function lotUnderTest(registry: Registry, id: string): Promise<LotU
   if (!lot) throw new CoilproofError('not-found', `No lot ${id} is registered here.`);
   const { number, revision } = lot.value.part;
   const part = await registry.get('part', partId(number, revision));
-  if (!part?.value.drawing) {
-    throw new CoilproofError(
-      'unknown-reference',
-      `Part ${number} revision ${revision}, of which lot ${id} is, has no drawing to judge units by.`,
-    );
+  return { id, lot: lot.value, yardstick: yardstickOf(part?.value, `${number} revision ${revision}`) };
+}
+
+/** A part's lots, and what their units are judged by. Throws as `lotUnderTest`. */
+export async function partUnderTest(registry: Registry, number: string, revision: string) {
+  const id = partId(number, revision);
+  const part = await registry.get('part', id);
+  if (!part) throw new CoilproofError('not-found', `No part ${number} revision ${revision} is registered here.`);
+  const lots: string[] = [];
+  let after: string | undefined;
+  for (;;) {
+    const page = await registry.list('lot', { limit: LOTS_A_PAGE, ...(after !== undefined && { after }) });
+    const own = page.filter(({ value }) => partId(value.part.number, value.part.revision) === id);
+    lots.push(...own.map((lot) => lot.id));
+    after = page.at(-1)?.id;
+    if (page.length < LOTS_A_PAGE)
+      return { lots, yardstick: yardstickOf(part.value, `${number} revision ${revision}`) };
   }
-  const conductor = part.value.construction?.winding?.conductor;
-  return { id, lot: lot.value, yardstick: { drawing: part.value.drawing, ...(conductor && { conductor }) } };
+}
+
+const LOTS_A_PAGE = 1000;
+
+function yardstickOf(part: Part | undefined, name: string): Yardstick {
+  if (!part?.drawing) throw new CoilproofError('unknown-reference', `Part ${name} has no drawing to judge units by.`);
+  const conductor = part.construction?.winding?.conductor;
+  return { drawing: part.drawing, ...(conductor && { conductor }) };
 }
 
 /**

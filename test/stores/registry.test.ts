@@ -29,7 +29,10 @@ describe.each(STORES)('the registry on $engine', ({ make }) => {
   it('creates, answers with a tag, and changes nothing for the same content', async () => {
     const created = await api().put('/v1/materials/ferrite-a').send(ferrite).expect(201, ferrite);
     expect(created.headers.location).toBe('/v1/materials/ferrite-a');
-    const again = await api().put('/v1/materials/ferrite-a').send({ saturation: { fluxDensity_T: 0.4 }, initialPermeability: 2000 }).expect(200);
+    const again = await api()
+      .put('/v1/materials/ferrite-a')
+      .send({ saturation: { fluxDensity_T: 0.4 }, initialPermeability: 2000 })
+      .expect(200);
     expect(again.headers.etag).toBe(created.headers.etag);
     const read = await api().get('/v1/materials/ferrite-a').expect(200, ferrite);
     expect(read.headers.etag).toBe(created.headers.etag);
@@ -52,14 +55,20 @@ describe.each(STORES)('the registry on $engine', ({ make }) => {
     const { headers } = await api().put('/v1/rigs/contested').send(rig).expect(201);
     const answers = await Promise.all(
       ['2027-01-01', '2027-01-02'].map((calibrationDue) =>
-        api().put('/v1/rigs/contested').set('if-match', headers.etag!).send({ ...rig, calibrationDue }),
+        api()
+          .put('/v1/rigs/contested')
+          .set('if-match', headers.etag!)
+          .send({ ...rig, calibrationDue }),
       ),
     );
     expect(answers.map(({ status }) => status).sort()).toEqual([200, 412]);
   });
 
   it('never changes a released revision, and lists parts and revisions in pages', async () => {
-    await api().put('/v1/parts/LG-1/revisions/A').send({ drawing }).expect(201, { number: 'LG-1', revision: 'A', drawing });
+    await api()
+      .put('/v1/parts/LG-1/revisions/A')
+      .send({ drawing })
+      .expect(201, { number: 'LG-1', revision: 'A', drawing });
     await api().put('/v1/parts/LG-1/revisions/A').send({ drawing }).expect(200);
     const changed = await api().put('/v1/parts/LG-1/revisions/A').send({ drawing, description: 'changed' });
     expect([changed.status, changed.body.type]).toEqual([409, 'urn:coilproof:problem:conflict']);
@@ -73,8 +82,13 @@ describe.each(STORES)('the registry on $engine', ({ make }) => {
     const seen: string[] = [];
     let after: string | null = '';
     while (after !== null) {
-      const page: request.Response = await api().get('/v1/parts').query({ limit: 2, ...(after && { after }) }).expect(200);
-      seen.push(...page.body.parts.map((part: { number: string; revision: string }) => `${part.number} ${part.revision}`));
+      const page: request.Response = await api()
+        .get('/v1/parts')
+        .query({ limit: 2, ...(after && { after }) })
+        .expect(200);
+      seen.push(
+        ...page.body.parts.map((part: { number: string; revision: string }) => `${part.number} ${part.revision}`),
+      );
       after = page.body.after;
     }
     expect(seen).toHaveLength(4);
@@ -83,11 +97,17 @@ describe.each(STORES)('the registry on $engine', ({ make }) => {
   });
 
   it('names the field of a reference that leads nowhere', async () => {
-    const lot = await api().put('/v1/lots/L-1').send({ part: { number: 'nobody', revision: 'A' } });
+    const lot = await api()
+      .put('/v1/lots/L-1')
+      .send({ part: { number: 'nobody', revision: 'A' } });
     expect([lot.status, lot.body.errors[0].pointer]).toEqual([422, '/part']);
-    const part = await api().put('/v1/parts/LG-3/revisions/A').send({ construction: { coil: cored('unobtainium') } });
+    const part = await api()
+      .put('/v1/parts/LG-3/revisions/A')
+      .send({ construction: { coil: cored('unobtainium') } });
     expect([part.status, part.body.errors[0].pointer]).toEqual([422, '/construction/coil/core/material']);
-    const energy = await api().post('/v1/energy').send({ inductor: { coil: cored('unobtainium') }, current_A: 1 });
+    const energy = await api()
+      .post('/v1/energy')
+      .send({ inductor: { coil: cored('unobtainium') }, current_A: 1 });
     expect([energy.status, energy.body.errors[0].pointer]).toEqual([422, '/inductor/coil/core/material']);
     const approval = await api()
       .post('/v1/approvals')
@@ -96,21 +116,37 @@ describe.each(STORES)('the registry on $engine', ({ make }) => {
   });
 
   it('keeps a lot with its part', async () => {
-    await api().put('/v1/lots/L-2').send({ part: { number: 'LG-1', revision: 'A' } }).expect(201);
-    await api().put('/v1/lots/L-2').send({ part: { number: 'LG-1', revision: 'A' }, size: 5 }).expect(200);
-    await api().put('/v1/lots/L-2').send({ part: { number: 'LG-1', revision: 'B' } }).expect(409);
+    await api()
+      .put('/v1/lots/L-2')
+      .send({ part: { number: 'LG-1', revision: 'A' } })
+      .expect(201);
+    await api()
+      .put('/v1/lots/L-2')
+      .send({ part: { number: 'LG-1', revision: 'A' }, size: 5 })
+      .expect(200);
+    await api()
+      .put('/v1/lots/L-2')
+      .send({ part: { number: 'LG-1', revision: 'B' } })
+      .expect(409);
   });
 
   it('calculates with a registered material as with the same one inline', async () => {
     const [byId, inline] = await Promise.all(
-      ['ferrite-a', ferrite].map((material) => api().post('/v1/energy').send({ inductor: { coil: cored(material) }, current_A: 2 })),
+      ['ferrite-a', ferrite].map((material) =>
+        api()
+          .post('/v1/energy')
+          .send({ inductor: { coil: cored(material) }, current_A: 2 }),
+      ),
     );
     expect(byId!.status).toBe(200);
     expect(byId!.body).toEqual(inline!.body);
   });
 
   it('approves a registered part, and records what its references stood for', async () => {
-    await api().put('/v1/parts/LG-4/revisions/A').send({ drawing, construction: { coil: cored('ferrite-a') } }).expect(201);
+    await api()
+      .put('/v1/parts/LG-4/revisions/A')
+      .send({ drawing, construction: { coil: cored('ferrite-a') } })
+      .expect(201);
     const unit = { serial: 'U-1', measuredAt: '2026-06-30T23:30:00+02:00', rig: 'on-time', sweep };
     await api().put('/v1/rigs/on-time').send(rig);
     const { body, status } = await api()

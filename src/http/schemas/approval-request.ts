@@ -117,7 +117,7 @@ export const UnitSchema = z
     message: 'a unit has a registered rig or an inline instrument, one of the two',
     path: ['rig'],
   })
-  .meta({ id: 'Unit', description: 'one measured unit' }) satisfies z.ZodType<Unit>;
+  .meta({ description: 'one measured unit' }) satisfies z.ZodType<Unit>;
 
 /** A unit as an approval records it: with what was registered of its rig. */
 export const RecordedUnitSchema = z

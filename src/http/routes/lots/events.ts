@@ -6,6 +6,7 @@ import { z } from 'zod';
 import { lotUnderTest, type UnitDesk } from '../../../approval/measuring.ts';
 import { CoilproofError } from '../../../errors.ts';
 import { operation } from '../../operation.ts';
+import { A_DAY_MS } from '../../streams.ts';
 import { LotParams } from './parameters.ts';
 
 /** How often the store is asked for new units, in ms: any process's, which no notification inside this one would tell of. */
@@ -29,7 +30,7 @@ export function lotEvents(app: FastifyInstance, desk: UnitDesk): void {
   app.withTypeProvider<ZodTypeProvider>().get(
     '/v1/lots/:lot/events',
     {
-      handlerTimeout: 0,
+      handlerTimeout: A_DAY_MS,
       schema: {
         ...operation({
           operationId: 'streamLotEvents',

@@ -21,6 +21,7 @@ import { problemBody } from '../../problems.ts';
 import { fieldErrors, type SchemaIssue, summarise } from '../../schema-issues.ts';
 import { UnitSchema } from '../../schemas/approval-request.ts';
 import { JudgedUnitSchema } from '../../schemas/judged-unit.ts';
+import { A_DAY_MS } from '../../streams.ts';
 import { EXAMPLE_UNIT, LotParams } from './parameters.ts';
 
 const NDJSON = 'application/x-ndjson';
@@ -39,7 +40,7 @@ export function postUnits(app: FastifyInstance, desk: UnitDesk): void {
     {
       // The handler may take as long as the rig sends.
       validatorCompiler: validateUnlessStream as never,
-      handlerTimeout: 0,
+      handlerTimeout: A_DAY_MS,
       schema: {
         ...operation({
           operationId: 'postUnits',

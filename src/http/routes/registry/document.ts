@@ -30,9 +30,18 @@ export function documentRoutes<K extends RegistryKind, Params extends Record<str
   registry: Registry,
   d: Document<K, Params, Body>,
 ): void {
+  putDocument(app, registry, d);
+  getDocument(app, registry, d);
+}
+
+/** PUT of a registered document. */
+export function putDocument<K extends RegistryKind, Params extends Record<string, string>, Body>(
+  app: FastifyInstance,
+  registry: Registry,
+  d: Document<K, Params, Body>,
+): void {
   const noun = d.name.toLowerCase();
-  const typed = app.withTypeProvider<ZodTypeProvider>();
-  typed.put(
+  app.withTypeProvider<ZodTypeProvider>().put(
     d.path,
     {
       schema: {
@@ -62,7 +71,15 @@ export function documentRoutes<K extends RegistryKind, Params extends Record<str
       return sendTagged(reply, registered, registered.value as never);
     },
   );
-  typed.get(
+}
+
+function getDocument<K extends RegistryKind, Params extends Record<string, string>, Body>(
+  app: FastifyInstance,
+  registry: Registry,
+  d: Document<K, Params, Body>,
+): void {
+  const noun = d.name.toLowerCase();
+  app.withTypeProvider<ZodTypeProvider>().get(
     d.path,
     {
       schema: {

@@ -8,7 +8,7 @@ import { InlineMaterialSchema } from '../../schemas/core.ts';
 import { LotSchema, RigSchema } from '../../schemas/registry.ts';
 import { identifier, text } from '../../schemas/text.ts';
 import { LotParams } from '../lots/parameters.ts';
-import { documentRoutes } from './document.ts';
+import { documentRoutes, putDocument } from './document.ts';
 import { EXAMPLE_LOT, EXAMPLE_MATERIAL, EXAMPLE_PART, EXAMPLE_RIG } from './examples.ts';
 import { listParts } from './list-parts.ts';
 
@@ -61,7 +61,7 @@ export function registry(app: FastifyInstance, store: Registry): void {
       );
     },
   });
-  documentRoutes(app, store, {
+  putDocument(app, store, {
     kind: 'lot',
     path: '/v1/lots/:lot',
     name: 'Lot',

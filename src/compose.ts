@@ -39,13 +39,13 @@ export async function compose(config: Config, overrides: Overrides = {}): Promis
   const desk: ApprovalDesk = {
     store: approvalStore(database),
     registry: registryStore(database),
+    units: groupCommit(unitStore(database)),
     engineVersion: version,
     now: overrides.now ?? (() => new Date()),
     newId: overrides.newId ?? randomUUIDv7,
   };
-  const units = groupCommit(unitStore(database));
   const simulator = createSimulator();
-  const app = await createApp({ version, logger, limits: config.limits, desk, units, simulator });
+  const app = await createApp({ version, logger, limits: config.limits, desk, simulator });
   return {
     app,
     desk,

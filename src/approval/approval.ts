@@ -1,3 +1,4 @@
+import type { UnitStore } from '../evidence/unit-store.ts';
 import type { Caution } from './cautions.ts';
 import type { CheckResult } from './check-result.ts';
 import type { Duty } from './duty.ts';
@@ -32,6 +33,7 @@ export interface Approval {
 export interface ApprovalDesk {
   readonly store: ApprovalStore;
   readonly registry: Registry;
+  readonly units: UnitStore;
   readonly engineVersion: string;
   readonly now: () => Date;
   readonly newId: () => string;
@@ -42,7 +44,7 @@ export interface ApprovalDesk {
  * The input digest is of the request as it was sent.
  */
 export async function approve(desk: ApprovalDesk, asSent: ApprovalRequest, idempotencyKey?: string): Promise<Recorded> {
-  const { request, references } = await resolveRequest(asSent, desk.registry);
+  const { request, references } = await resolveRequest(asSent, desk);
   const { verdict, reasons, checks, cautions } = evaluate(request);
   const engine = { version: desk.engineVersion };
   const content = { id: desk.newId(), verdict, reasons, ...request, checks, cautions, references, engine };

@@ -18,6 +18,8 @@ export const CHECK_NAMES = [
   'measured-saturation',
   'measured-energy',
   'measured-resistance',
+  'lot-capability',
+  'calibration',
 ] as const;
 
 export type CheckName = (typeof CHECK_NAMES)[number];

@@ -24,7 +24,7 @@ export interface Duty {
   };
   readonly strayField?: { readonly distance_m: number; readonly limit_T: number };
   readonly hotspotLimit_degC?: number;
-  readonly evidence?: { readonly minimumUnits: number };
+  readonly evidence?: { readonly minimumUnits?: number; readonly minimumCpk?: number };
   /** accepted probability of a wrong decision; absent: 0.05 */
   readonly risk?: number;
 }

@@ -1,6 +1,8 @@
 import { CoilproofError } from '../errors.ts';
+import { summariseLot } from '../evidence/lot-summary.ts';
 import { onRig, type Unit } from '../evidence/unit.ts';
 import type { Material } from '../physics/core/material.ts';
+import { lotUnderTest, type UnitDesk } from './measuring.ts';
 import type { Part } from './part.ts';
 import { partId, type Registry } from './registry.ts';
 import type { ApprovalRequest, Evidence } from './request.ts';
@@ -62,10 +64,10 @@ function withMaterials(node: unknown, byId: ReadonlyMap<string, Material>): unkn
  */
 export async function resolveRequest(
   request: ApprovalRequest,
-  registry: Registry,
+  { registry, units }: UnitDesk,
 ): Promise<{ request: ApprovalRequest; references: readonly Reference[] }> {
   const part = await resolvePart(request.part, registry);
-  const evidence = await resolveRigs(request.evidence, registry);
+  const evidence = await resolveRigs(await resolveLots(request.evidence, part.part, { registry, units }), registry);
   const { body, references } = await resolveMaterials(
     { ...request, part: part.part, ...(evidence.evidence && { evidence: evidence.evidence }) },
     registry,
@@ -83,6 +85,31 @@ async function resolvePart(part: Part, registry: Registry): Promise<{ part: Part
       `no part ${part.number} revision ${part.revision} is registered: register it, or send drawing and construction`,
     );
   return { part: stored.value, references: [{ pointer: '/part', kind: 'part', id, tag: stored.tag }] };
+}
+
+async function resolveLots(
+  evidence: Evidence | undefined,
+  part: Part,
+  { registry, units }: UnitDesk,
+): Promise<Evidence | undefined> {
+  if (!evidence?.lots) return evidence;
+  const lotSummaries = await Promise.all(
+    evidence.lots.map(async (id, index) => {
+      const pointer = `/evidence/lots/${index}`;
+      const stored = await registry.get('lot', id);
+      if (!stored) throw missing(pointer, `no lot ${id} is registered`);
+      const of = stored.value.part;
+      if (of.number !== part.number || of.revision !== part.revision) {
+        throw missing(
+          pointer,
+          `lot ${id} is one of ${of.number} revision ${of.revision}, not of ${part.number} revision ${part.revision}`,
+        );
+      }
+      const { yardstick } = await lotUnderTest(registry, id);
+      return summariseLot(id, await units.counts(id), await units.rollups([id]), yardstick);
+    }),
+  );
+  return { ...evidence, lotSummaries };
 }
 
 async function resolveRigs(evidence: Evidence | undefined, registry: Registry) {

@@ -1,9 +1,14 @@
+import type { LotSummary } from '../evidence/lot-summary.ts';
 import type { Unit } from '../evidence/unit.ts';
 import type { Duty } from './duty.ts';
 import type { Part } from './part.ts';
 
 /** What was measured, in favour of or against a part. */
 export interface Evidence {
+  /** ids of registered lots of the part */
+  readonly lots?: readonly string[];
+  /** what those lots came to, once they are looked up */
+  readonly lotSummaries?: readonly LotSummary[];
   readonly units?: readonly Unit[];
 }
 

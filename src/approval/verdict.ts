@@ -1,3 +1,4 @@
+import { measuredIn } from '../evidence/lot-summary.ts';
 import type { CheckResult } from './check-result.ts';
 import type { ApprovalRequest } from './request.ts';
 
@@ -15,7 +16,8 @@ export function verdictOf(
     checks.filter((result) => result.outcome === outcome).map(({ check }) => check);
   const failed = named('fail');
   const open = named('inconclusive');
-  const measured = request.evidence?.units?.length ?? 0;
+  const { units = [], lotSummaries = [] } = request.evidence ?? {};
+  const measured = lotSummaries.reduce((sum, lot) => sum + measuredIn(lot), units.length);
   const minimum = request.duty.evidence?.minimumUnits ?? 0;
   const doubts = [
     ...(open.length > 0 ? [`Inconclusive: ${open.join(', ')}.`] : []),

@@ -1,12 +1,5 @@
 import { factorise, logDeterminant, solveFactorised } from './pulse-cholesky.ts';
-import {
-  arcAt,
-  type Curve,
-  curveOf,
-  logSlopeAt,
-  sensitivityAt,
-  sensitivityOf,
-} from './pulse-curve.ts';
+import { arcAt, type Curve, curveOf, logSlopeAt, sensitivityAt, sensitivityOf } from './pulse-curve.ts';
 
 /**
  * Readings of a rising branch in coordinates of one, one or many samples each. λ comes from a sum over many samples and is taken
@@ -89,7 +82,8 @@ function costOf({ linkage, current, weight }: Readings, prior: Prior, curve: Cur
     residual += weight[k]! * difference * difference;
   }
   let rough = 0;
-  for (let r = 0; r < prior.weights.length; r++) rough += prior.weights[r]! * thirdDifference(curve.coefficients, r) ** 2;
+  for (let r = 0; r < prior.weights.length; r++)
+    rough += prior.weights[r]! * thirdDifference(curve.coefficients, r) ** 2;
   return { residual, objective: residual + prior.smoothing * rough + prior.shiftPrecision * shift * shift };
 }
 

@@ -32,7 +32,10 @@ const FEWEST = 8;
 export function samplesOf({ time_s, voltage_V, current_A, resistance_ohm, voltageOffset_V }: Pulse): Samples {
   const count = time_s.length;
   if (count < FEWEST) throw new InvalidQuantity('/time_s', `a pulse has at least ${FEWEST} samples, not ${count}`);
-  for (const [name, values] of [['voltage_V', voltage_V], ['current_A', current_A]] as const) {
+  for (const [name, values] of [
+    ['voltage_V', voltage_V],
+    ['current_A', current_A],
+  ] as const) {
     if (values.length !== count) {
       throw new InvalidQuantity(`/${name}`, `as many samples as times are needed: ${values.length} for ${count}`);
     }

@@ -1,6 +1,7 @@
 import { inverse } from './pulse-cholesky.ts';
 import {
   addLogSlopeSensitivity,
+  arcAt,
   type Curve,
   curveOf,
   linkageAt,
@@ -31,6 +32,8 @@ export interface SmoothCurve {
   readonly covariance: Float64Array;
   /** estimated noise variance of a reading of weight one */
   readonly variance: number;
+  /** s of the readings, increasing */
+  readonly places: Float64Array;
   /** parameters that the readings decide rather than the prior */
   readonly effectiveParameters: number;
 }
@@ -60,7 +63,7 @@ const MOST_INTERVALS = 160;
  * `noiseVariance`: of a reading of weight one, known beforehand, 0 where it is not; it only keeps the search going until the curve follows
  * the readings. `shiftDeviation`: standard uncertainty of λ's zero. Null where no fit could be made.
  */
-export function smooth(readings: Readings, noiseVariance: number, shiftDeviation: number): SmoothCurve | null {
+export function smoothCurve(readings: Readings, noiseVariance: number, shiftDeviation: number): SmoothCurve | null {
   const task: Task = { readings, noiseVariance, shiftDeviation };
   let intervals = INTERVALS;
   let start: Float64Array = new Float64Array(intervals + 3);
@@ -68,7 +71,7 @@ export function smooth(readings: Readings, noiseVariance: number, shiftDeviation
   for (;;) {
     const candidates = search(task, start, stiffest);
     if (candidates.length === 0) return null;
-    const result = average(candidates);
+    const result = average(candidates, readings);
     // Where the readings decide half of what the spline can be, its knots limit it and no longer its prior.
     const limited = 2 * result.effectiveParameters > intervals && 2 * intervals <= MOST_INTERVALS;
     if (!limited || 4 * intervals > readings.linkage.length) return result;
@@ -77,6 +80,20 @@ export function smooth(readings: Readings, noiseVariance: number, shiftDeviation
     start = onTwiceTheIntervals(result.curve.coefficients);
   }
 }
+
+/** A first curve through readings, soon made and good enough to group samples along. Null where none could be made. */
+export function roughCurve(readings: Readings, noiseVariance: number, shiftDeviation: number): Fit | null {
+  const start = new Float64Array(ROUGH_INTERVALS + ORDER);
+  const candidates = scan(
+    { readings, noiseVariance, shiftDeviation },
+    new Float64Array(ROUGH_INTERVALS).fill(1),
+    start,
+    STIFFEST,
+  );
+  return candidates.length > 0 ? best(candidates) : null;
+}
+
+const ROUGH_INTERVALS = 20;
 
 interface Task {
   readonly readings: Readings;
@@ -92,7 +109,7 @@ function search(task: Task, start: Float64Array, stiffest: number): Candidate[] 
   let candidates = scan(task, even, start, stiffest);
   for (let round = 0; round < ROUNDS && candidates.length > 0; round++) {
     const before = best(candidates);
-    const weights = priorWeights(average(candidates).curve);
+    const weights = priorWeights(average(candidates, task.readings).curve);
     const adapted = scan(task, weights, before.curve.coefficients, Math.min(before.level + 2, STIFFEST));
     candidates = [...candidates, ...adapted];
     if (best(candidates).deviance > before.deviance - 1) break;
@@ -173,7 +190,7 @@ function priorWeights({ intervals, coefficients }: Curve): Float64Array {
 }
 
 /** The candidates' average by likelihood, each smoothing as likely beforehand as the next on a logarithmic scale. */
-function average(candidates: readonly Candidate[]): SmoothCurve {
+function average(candidates: readonly Candidate[], { linkage }: Readings): SmoothCurve {
   const { deviance: least } = best(candidates);
   const counted = candidates.filter(({ deviance }) => deviance < least + NEGLIGIBLE);
   const total = counted.reduce((sum, { deviance }) => sum + Math.exp((least - deviance) / 2), 0);
@@ -200,7 +217,10 @@ function average(candidates: readonly Candidate[]): SmoothCurve {
     }
     effectiveParameters += share * decided(candidate, own);
   }
-  return { curve: curveOf(mean.slice(0, -1)), shift: mean[size - 1]!, covariance, variance, effectiveParameters };
+  const curve = curveOf(mean.slice(0, -1));
+  const shift = mean[size - 1]!;
+  const places = linkage.map((lambda) => arcAt(curve, lambda + shift)).sort();
+  return { curve, shift, covariance, variance, places, effectiveParameters };
 }
 
 function parameters({ curve, shift }: Fit): Float64Array {
@@ -241,7 +261,7 @@ export interface CurvePoint {
 }
 
 /** The curve at each s. */
-export function pointsAlong({ curve, covariance }: SmoothCurve, places: readonly number[]): CurvePoint[] {
+export function pointsAlong({ curve, covariance, places: readAt }: SmoothCurve, places: readonly number[]): CurvePoint[] {
   const n = curve.coefficients.length;
   const table = sensitivityOf(curve);
   const row = new Float64Array(n);
@@ -258,7 +278,7 @@ export function pointsAlong({ curve, covariance }: SmoothCurve, places: readonly
     // At given current s gives way: by −(∂i/∂c)/(2p), and f with it.
     sensitivityAt(table, n, s, -turn / (2 * p), row);
     addLogSlopeSensitivity(curve.intervals, s, row);
-    const logSlopeDeviation = deviation();
+    const logSlopeDeviation = Math.hypot(deviation(), unseen(curve, readAt, s));
     sensitivityAt(table, n, s, 1 / p, row);
     return {
       linkage,
@@ -269,4 +289,24 @@ export function pointsAlong({ curve, covariance }: SmoothCurve, places: readonly
       logSlopeTurn: -turn / (2 * p),
     };
   });
+}
+
+/** What f could have done between two readings: its curvature there times an eighth of their distance squared. */
+function unseen(curve: Curve, readAt: Float64Array, s: number): number {
+  let low = 0;
+  let high = readAt.length - 1;
+  while (high - low > 1) {
+    const middle = (low + high) >> 1;
+    if (readAt[middle]! <= s) low = middle;
+    else high = middle;
+  }
+  const [a, b] = [readAt[low]!, readAt[high]!];
+  const gap = b - a;
+  let most = 0;
+  for (let k = 0; k <= 4; k++) {
+    const t = a + (gap * k) / 4;
+    const h = 0.5 / curve.intervals;
+    most = Math.max(most, Math.abs(logSlopeTurnAt(curve, t + h) - logSlopeTurnAt(curve, t - h)) / (2 * h));
+  }
+  return (most * gap * gap) / 8;
 }

@@ -3,7 +3,6 @@ import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastif
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
 import type { Simulator } from '../approval/simulator.ts';
-import type { UnitStore } from '../evidence/unit-store.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
@@ -21,7 +20,6 @@ export interface AppOptions {
   readonly logger: NonNullable<FastifyServerOptions['loggerInstance']>;
   readonly limits: Limits;
   readonly desk: ApprovalDesk;
-  readonly units: UnitStore;
   readonly simulator: Simulator;
 }
 
@@ -71,7 +69,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   calculations(app, { registry: options.desk.registry, simulator: options.simulator });
   approvals(app, options.desk);
   registry(app, options.desk.registry);
-  lots(app, { registry: options.desk.registry, units: options.units });
+  lots(app, options.desk);
   app.get('/openapi.json', { schema: { hide: true } }, async () => app.swagger());
   return app;
 }

@@ -3,6 +3,7 @@ import { constructionInductance } from './construction-inductance.ts';
 import { coreEnergyCapacity } from './core-energy-capacity.ts';
 import { fluxDensity } from './flux-density.ts';
 import { inductanceAtPeak } from './inductance-at-peak.ts';
+import { calibration, lotCapability } from './lots.ts';
 import { measuredEnergy, measuredInductance, measuredResistance, measuredSaturation } from './measured.ts';
 import { saturationCurrent } from './saturation-current.ts';
 import { storedEnergy } from './stored-energy.ts';
@@ -29,4 +30,6 @@ export const CHECKS: readonly Check[] = [
   measuredSaturation,
   measuredEnergy,
   measuredResistance,
+  lotCapability,
+  calibration,
 ];

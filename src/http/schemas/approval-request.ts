@@ -80,7 +80,17 @@ export const DutySchema = z
       .exactOptional(),
     strayField: z.strictObject({ distance_m: q.length_m, limit_T: q.fluxDensity_T }).exactOptional(),
     hotspotLimit_degC: q.temperature_degC.exactOptional(),
-    evidence: z.strictObject({ minimumUnits: z.int().min(0).max(1e6) }).exactOptional(),
+    evidence: z
+      .strictObject({
+        minimumUnits: z.int().min(0).max(1e9).exactOptional(),
+        minimumCpk: z
+          .number()
+          .min(0)
+          .max(10)
+          .exactOptional()
+          .meta({ description: 'of each cited lot; default 1.33, common practice' }),
+      })
+      .exactOptional(),
     risk: q.risk.exactOptional(),
   })
   .meta({ id: 'Duty', description: 'what a place of use asks of a part' }) satisfies z.ZodType<Duty>;
@@ -127,6 +137,11 @@ export const RecordedUnitSchema = z
 export const ApprovalRequestSchema = z.strictObject({
   part: PartSchema,
   duty: DutySchema,
-  evidence: z.strictObject({ units: list(UnitSchema, { max: 1000 }).exactOptional() }).exactOptional(),
+  evidence: z
+    .strictObject({
+      lots: list(identifier, { max: 100 }).exactOptional().meta({ description: 'registered lots of the part' }),
+      units: list(UnitSchema, { max: 1000 }).exactOptional(),
+    })
+    .exactOptional(),
   uncertainty: UncertaintyMap.exactOptional(),
 }) satisfies z.ZodType<ApprovalRequest>;

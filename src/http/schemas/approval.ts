@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { Approval } from '../../approval/approval.ts';
 import { CHECK_NAMES } from '../../approval/check.ts';
+import { UNIT_QUANTITIES } from '../../evidence/judged-unit.ts';
 import { DutySchema, PartSchema, RecordedUnitSchema } from './approval-request.ts';
 import { list } from './list.ts';
 import { CautionSchema, MethodSchema } from './method.ts';
@@ -53,6 +54,20 @@ export const CheckSchema = z
   })
   .meta({ id: 'Check' });
 
+const LotSummarySchema = z.object({
+  lot: z.string(),
+  counts: z.object({ pass: z.int(), inconclusive: z.int(), fail: z.int(), outOfCalibration: z.int() }),
+  quantities: list(
+    z.object({
+      quantity: z.enum(UNIT_QUANTITIES),
+      limit: judgement.limit,
+      n: z.int(),
+      mean: z.number().exactOptional(),
+      standardDeviation: z.number().exactOptional(),
+    }),
+  ),
+});
+
 export const ApprovalSchema = z
   .object({
     id: z.string(),
@@ -60,7 +75,15 @@ export const ApprovalSchema = z
     reasons: list(z.string()),
     part: PartSchema,
     duty: DutySchema,
-    evidence: z.object({ units: list(RecordedUnitSchema).exactOptional() }).exactOptional(),
+    evidence: z
+      .object({
+        lots: list(z.string()).exactOptional(),
+        lotSummaries: list(LotSummarySchema)
+          .exactOptional()
+          .meta({ description: 'what the lots came to when they were looked up' }),
+        units: list(RecordedUnitSchema).exactOptional(),
+      })
+      .exactOptional(),
     uncertainty: UncertaintyMap.exactOptional(),
     checks: list(CheckSchema),
     cautions: list(CautionSchema),

@@ -1,0 +1,189 @@
+import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import type { ChannelNoise, QuietPart } from './pulse-baseline.ts';
+import type { Samples } from './pulse-record.ts';
+
+/** Where the voltage's offset was taken from; `none`: the pulse shows none, and it was taken as zero. */
+export type OffsetSource = 'given' | 'quiet part' | 'closed loop' | 'none';
+
+export interface VoltageOffset {
+  readonly value_V: number;
+  readonly source: OffsetSource;
+  /** standard uncertainty; 0 where it was given or taken as zero */
+  readonly standardUncertainty_V: number;
+}
+
+/**
+ * A change of voltage by this part of its largest from one sample to the next is an edge, which may lie anywhere between the two: the
+ * trapezium's share of it is then uncertain by up to half of change × interval.
+ */
+const EDGE = 0.25;
+
+export function isEdge(voltage: Float64Array, k: number, largest: number): boolean {
+  return Math.abs(voltage[k]! - voltage[k - 1]!) > EDGE * largest;
+}
+
+/** The current has returned to zero within this part of its largest, or its noise if that is more. */
+const RETURNED = 0.005;
+
+/**
+ * The voltage offset: as given; else the mean of a quiet part, at the start or else at the end; else what lets λ return to its start where the
+ * current does (a remanence that changed is taken for an offset); else zero. `current` without its offset.
+ */
+export function voltageOffset(
+  { time, voltage, resistance_ohm }: Samples,
+  current: Float64Array,
+  given: number | 'auto',
+  quiet: QuietPart | null,
+  noise: { readonly voltage: ChannelNoise; readonly current: ChannelNoise },
+): VoltageOffset {
+  if (given !== 'auto') return { value_V: given, source: 'given', standardUncertainty_V: 0 };
+  if (quiet) {
+    const standardUncertainty_V = Math.hypot(noise.voltage.deviation / Math.sqrt(quiet.count), noise.voltage.bias);
+    return { value_V: quiet.voltage, source: 'quiet part', standardUncertainty_V };
+  }
+  const last = time.length - 1;
+  const largest = largestOf(current);
+  const returned = Math.max(RETURNED * largest, 4 * noise.current.deviation);
+  if (!(Math.abs(current[last]! - current[0]!) <= returned)) {
+    return { value_V: 0, source: 'none', standardUncertainty_V: 0 };
+  }
+  const duration = time[last]! - time[0]!;
+  const value_V = integral(time, (k) => voltage[k]! - resistance_ohm * current[k]!) / duration;
+  const timing = edgeUncertainty(time, voltage, 0, last) / duration;
+  const noisy = Math.hypot(noise.voltage.deviation / Math.sqrt(time.length), noise.voltage.bias);
+  return { value_V, source: 'closed loop', standardUncertainty_V: Math.hypot(timing, noisy) };
+}
+
+function largestOf(values: Float64Array): number {
+  let largest = 0;
+  for (const value of values) largest = Math.max(largest, Math.abs(value));
+  return largest;
+}
+
+/** Standard uncertainty of ∫v dt between two samples from not knowing when between its samples an edge came: rectangular, each on its own. */
+export function edgeUncertainty(time: Float64Array, voltage: Float64Array, from: number, to: number): number {
+  const largest = largestOf(voltage);
+  let squares = 0;
+  for (let k = from + 1; k <= to; k++) {
+    if (isEdge(voltage, k, largest)) squares += ((voltage[k]! - voltage[k - 1]!) * (time[k]! - time[k - 1]!)) ** 2 / 12;
+  }
+  return Math.sqrt(squares);
+}
+
+/**
+ * ∫ y dt over all samples by trapezia, in a compensated sum (A. Neumaier, Z. angew. Math. Mech. 54 (1974) 39-51). Of all rules through
+ * the samples trapezia weigh independent noise most evenly and are exact for a voltage that stands still; rules of higher order gain
+ * nothing where the voltage has edges.
+ */
+export function integral(time: Float64Array, y: (k: number) => number): number {
+  let [sum, correction] = [0, 0];
+  let before = y(0);
+  for (let k = 1; k < time.length; k++) {
+    const value = y(k);
+    const term = ((before + value) / 2) * (time[k]! - time[k - 1]!);
+    const next = sum + term;
+    correction += Math.abs(sum) >= Math.abs(term) ? sum - next + term : term - next + sum;
+    sum = next;
+    before = value;
+  }
+  return sum + correction;
+}
+
+/** λ at every sample, ∫(v − R·i) dt from the sample `origin` on (before it as well), by the same rule; both without their offsets. */
+export function fluxLinkage(
+  { time, resistance_ohm }: Samples,
+  voltage: Float64Array,
+  current: Float64Array,
+  origin: number,
+): Float64Array {
+  const linkage = new Float64Array(time.length);
+  let [sum, correction] = [0, 0];
+  for (let k = 1; k < time.length; k++) {
+    const driving = (voltage[k - 1]! + voltage[k]! - resistance_ohm * (current[k - 1]! + current[k]!)) / 2;
+    const term = driving * (time[k]! - time[k - 1]!);
+    const next = sum + term;
+    correction += Math.abs(sum) >= Math.abs(term) ? sum - next + term : term - next + sum;
+    sum = next;
+    linkage[k] = sum + correction;
+  }
+  const atOrigin = linkage[origin]!;
+  if (atOrigin !== 0) for (let k = 0; k < linkage.length; k++) linkage[k]! -= atOrigin;
+  return linkage;
+}
+
+/** The samples `from` to `to` (inclusive) over which the current rises from zero to its peak. */
+export interface RisingBranch {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** Fewest samples of a rise that a curve can be put through. */
+const FEWEST_RISING = 6;
+/** A peak below this many standard deviations of the noise is noise. */
+const SEEN = 12;
+/** A pulse starts this near zero, in parts of its peak (or within its noise). */
+const NEAR_ZERO = 0.05;
+
+/**
+ * The rising branch of a pulse that starts at the sample `onset`: to where λ, which is far less noisy than the current, is largest while the
+ * current is near its peak. Samples next to an edge at either end are left out.
+ *
+ * Throws `InvalidQuantity` at `/current_A…`, `/voltage_V` or `/resistance_ohm` where the current does not rise or not from zero, the flux
+ * linkage does not rise with it, or too few samples lie on the rise.
+ */
+export function risingBranch(
+  samples: Samples,
+  voltage: Float64Array,
+  current: Float64Array,
+  linkage: Float64Array,
+  onset: number,
+  noise: ChannelNoise,
+): RisingBranch {
+  const peak = largestCurrent(current);
+  if (!(peak > SEEN * noise.deviation)) {
+    throw new InvalidQuantity('/current_A', `the current never rises out of its noise, ${noise.deviation} A`);
+  }
+  let end = onset;
+  while (end < current.length - 1 && current[end]! < 0.9 * peak) end++;
+  while (end < current.length - 1 && current[end]! > peak / 2) end++;
+  let to = onset;
+  for (let k = onset; k <= end; k++) if (linkage[k]! > linkage[to]!) to = k;
+  const steepest = largestOf(voltage);
+  let from = onset;
+  while (from < to && isEdge(voltage, from + 1, steepest)) from++;
+  while (to > from && isEdge(voltage, to, steepest)) to--;
+  if (!(current[to]! > peak / 2 && linkage[to]! > 0)) throw notRising(samples, voltage);
+  const first = current[from]!;
+  if (Math.abs(first) > Math.max(NEAR_ZERO * peak, SEEN * noise.deviation) && from === onset) {
+    throw new InvalidQuantity(
+      `/current_A/${onset}`,
+      `a pulse starts at zero current; this one starts at ${((100 * first) / peak).toPrecision(3)} % of its peak`,
+    );
+  }
+  if (to - from + 1 < FEWEST_RISING) {
+    throw new InvalidQuantity(
+      '/current_A',
+      `only ${to - from + 1} samples lie on the rise of the current; at least ${FEWEST_RISING} are needed`,
+    );
+  }
+  return { from, to };
+}
+
+function largestCurrent(current: Float64Array): number {
+  let largest = Number.NEGATIVE_INFINITY;
+  for (const value of current) largest = Math.max(largest, value);
+  return largest;
+}
+
+function notRising({ time, resistance_ohm }: Samples, voltage: Float64Array): InvalidQuantity {
+  const drives = integral(time, (k) => Math.max(voltage[k]!, 0)) > integral(time, (k) => Math.max(-voltage[k]!, 0));
+  return drives && resistance_ohm > 0
+    ? new InvalidQuantity(
+        '/resistance_ohm',
+        `the flux linkage does not rise with the current: ${resistance_ohm} Ω leaves nothing of the voltage`,
+      )
+    : new InvalidQuantity(
+        '/voltage_V',
+        'the flux linkage does not rise with the current: the polarity of one of the two is reversed, or the offset is wrong',
+      );
+}

@@ -1,0 +1,245 @@
+import type { Sweep } from '../physics/characteristics/measured.ts';
+import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import type { Method } from '../physics/method.ts';
+import { integrate } from '../physics/numerics/quadrature.ts';
+import { findRoot } from '../physics/numerics/roots.ts';
+import { type ChannelNoise, noiseOf, quietPart } from './pulse-baseline.ts';
+import { arcAt, type Curve, linkageAt, logSlopeAt } from './pulse-curve.ts';
+import { auditEnergy, type EnergyAudit } from './pulse-energy.ts';
+import { edgeUncertainty, fluxLinkage, type OffsetSource, risingBranch, voltageOffset } from './pulse-flux.ts';
+import { evenReadings, readingsAlong, type Scale, type ScaledReadings, scaleOf } from './pulse-readings.ts';
+import { type Pulse, samplesOf } from './pulse-record.ts';
+import { pointsAlong, roughCurve, type SmoothCurve, smoothCurve } from './pulse-smoothing.ts';
+
+export type { Pulse } from './pulse-record.ts';
+
+/** The flux characteristic of a pulse's rise from zero current to its peak, equal arrays. */
+export interface PulseSweep {
+  readonly current_A: readonly number[];
+  readonly fluxLinkage_Wb: readonly number[];
+  readonly differentialInductance_H: readonly number[];
+  /** of the differential inductance at its current (k = 1) */
+  readonly standardUncertainty_H: readonly number[];
+}
+
+export interface PulseAnalysis {
+  /** positive currents also where the pulse was negative */
+  readonly sweep: PulseSweep;
+  readonly energy: EnergyAudit;
+  readonly voltageOffset_V: number;
+  readonly voltageOffsetSource: OffsetSource;
+  /** what the current reads in the pulse's quiet part; 0 where there is none */
+  readonly currentOffset_A: number;
+  /** standard deviation of one sample */
+  readonly voltageNoise_V: number;
+  readonly currentNoise_A: number;
+  readonly method: Method;
+}
+
+/** Points of the sweep: evenly along the curve, so that linear part and saturation have as many. */
+const POINTS = 200;
+
+/**
+ * The flux characteristic of an inductor from one pulse: λ(t) = ∫(v − R·i) dt, then a smooth rising λ(i) through the rise of the current from
+ * zero to its peak. It is the current that is regressed on λ, not λ on the current: λ is a sum over many samples and next to free of
+ * noise, so nothing of the current's noise flattens the curve. See `smoothCurve` for how smooth and how sure; the falling branch takes part in the
+ * energies alone, as a core with hysteresis comes down by another way.
+ *
+ * A negative pulse is mirrored. Throws `InvalidQuantity` as `samplesOf` and `risingBranch` do.
+ *
+ * PENDING TABLE
+ */
+export function analysePulse(pulse: Pulse): PulseAnalysis {
+  const samples = samplesOf(pulse);
+  const { time, mirrored } = samples;
+  const noise = { voltage: noiseOf(time, samples.voltage), current: noiseOf(time, samples.current) };
+  const before = quietPart(samples.voltage, samples.current, noise);
+  const quiet = before ?? quietPart(samples.voltage, samples.current, noise, true);
+  const currentOffset = quiet?.current ?? 0;
+  const current = samples.current.map((value) => value - currentOffset);
+  const given = pulse.voltageOffset_V ?? 'auto';
+  const signedGiven = given !== 'auto' && mirrored ? -given : given;
+  const offset = voltageOffset(samples, current, signedGiven, quiet, noise);
+  const voltage = samples.voltage.map((value) => value - offset.value_V);
+  const onset = before ? before.count - 1 : 0;
+  const linkage = fluxLinkage(samples, voltage, current, onset);
+  const { from, to } = risingBranch(samples, voltage, current, linkage, onset, noise.current);
+
+  const branch = {
+    linkage: linkage.slice(from, to + 1),
+    current: withoutSpikes(current.slice(from, to + 1), noise.current),
+    time: time.slice(from, to + 1),
+  };
+  const scale = scaleOf(branch);
+  // When the voltage came between two samples is not known, hence where on the curve λ is zero; without a quiet part even less.
+  const shiftDeviation = before
+    ? Math.hypot(
+        edgeUncertainty(time, voltage, onset, from),
+        Math.abs(voltage[from]!) * meanInterval(time) * STRAY_TIMING,
+      )
+    : UNKNOWN_START * scale.linkage;
+  const { smoothed, readings } = characteristicOf(branch, scale, noise.current, shiftDeviation);
+  const end = Math.min(arcAt(smoothed.curve, branch.linkage.at(-1)! / scale.linkage + smoothed.shift), 1);
+  const currentUncertainty = quiet
+    ? Math.hypot(noise.current.deviation / Math.sqrt(quiet.count), noise.current.bias)
+    : 0;
+  const points = sweepPoints(smoothed, readings, scale, end, {
+    voltage_V: Math.hypot(offset.standardUncertainty_V, noise.voltage.bias),
+    current_A: currentUncertainty,
+  });
+  const unit_J = scale.linkage * scale.current;
+  const sign = mirrored ? -1 : 1;
+  return {
+    sweep: points.sweep,
+    energy: auditEnergy(samples, voltage, current, noise, offset.standardUncertainty_V, {
+      stored_J: unit_J * energyAlong(smoothed.curve, end),
+      remaining_J:
+        unit_J * energyAlong(smoothed.curve, arcAtCurrent(smoothed.curve, current.at(-1)! / scale.current, end)),
+    }),
+    voltageOffset_V: offset.value_V * sign,
+    voltageOffsetSource: offset.source,
+    currentOffset_A: currentOffset * sign,
+    voltageNoise_V: noise.voltage.deviation,
+    currentNoise_A: noise.current.deviation,
+    method: methodOf(points, offset.source, branch.time.length),
+  };
+}
+
+/** The differential sweep of an analysed pulse, for `measuredCharacteristic` and all that goes through it. */
+export function toSweep({ sweep }: PulseAnalysis): Sweep {
+  return { kind: 'differential', current_A: sweep.current_A, inductance_H: sweep.differentialInductance_H };
+}
+
+/** Where the start of the pulse is known, but for part of an interval. */
+const STRAY_TIMING = 0.1;
+/** Where it is not: part of the largest λ. */
+const UNKNOWN_START = 0.1;
+
+function meanInterval(time: Float64Array): number {
+  return (time.at(-1)! - time[0]!) / (time.length - 1);
+}
+
+/** A sample further than this many standard deviations beyond both its neighbours is a spike. */
+const SPIKE = 8;
+
+/** The current with lone spikes replaced by the nearer neighbour. A current that rises has none, however steeply. */
+function withoutSpikes(current: Float64Array, { deviation }: ChannelNoise): Float64Array {
+  const result = current.slice();
+  for (let k = 1; k + 1 < current.length; k++) {
+    const [low, high] = [Math.min(current[k - 1]!, current[k + 1]!), Math.max(current[k - 1]!, current[k + 1]!)];
+    if (current[k]! > high + SPIKE * deviation) result[k] = high;
+    else if (current[k]! < low - SPIKE * deviation) result[k] = low;
+  }
+  return result;
+}
+
+/** The smooth curve through a branch; many samples are grouped along a first, rough one. */
+function characteristicOf(
+  branch: { readonly linkage: Float64Array; readonly current: Float64Array; readonly time: Float64Array },
+  scale: Scale,
+  noise: ChannelNoise,
+  shiftDeviation: number,
+): { smoothed: SmoothCurve; readings: ScaledReadings } {
+  const variance = (noise.deviation / scale.current) ** 2;
+  const shift = shiftDeviation / scale.linkage;
+  const first = evenReadings(branch, scale);
+  const rough = first.samples > 1 ? roughCurve(first, variance / first.samples, shift) : null;
+  const readings = rough ? readingsAlong(branch, scale, rough, noise.step) : first;
+  const smoothed = smoothCurve(readings, variance / readings.samples, shift);
+  if (!smoothed)
+    throw new InvalidQuantity('/current_A', 'no rising flux characteristic can be put through the samples');
+  return { smoothed, readings };
+}
+
+interface Points {
+  readonly sweep: PulseSweep;
+  /** relative standard uncertainty of λ at the peak */
+  readonly linkageUncertainty: number;
+}
+
+function sweepPoints(
+  smoothed: SmoothCurve,
+  readings: ScaledReadings,
+  scale: Scale,
+  end: number,
+  uncertainty: { readonly voltage_V: number; readonly current_A: number },
+): Points {
+  const places = Array.from({ length: POINTS }, (_, k) => (end * k) / (POINTS - 1));
+  const points = pointsAlong(smoothed, places);
+  const peak = points.at(-1)!;
+  const elapsed = readings.time.at(-1)! - readings.time[0]!;
+  return {
+    sweep: {
+      current_A: points.map(({ current }) => current * scale.current),
+      fluxLinkage_Wb: points.map(({ linkage }) => linkage * scale.linkage),
+      differentialInductance_H: points.map(({ slope }) => slope * (scale.linkage / scale.current)),
+      standardUncertainty_H: points.map(({ slope, linkage, logSlopeDeviation, logSlopeTurn }) => {
+        const byVoltage = (uncertainty.voltage_V * slownessAt(readings, linkage - smoothed.shift)) / scale.linkage;
+        const byCurrent = (uncertainty.current_A / scale.current) * logSlopeTurn;
+        return slope * (scale.linkage / scale.current) * Math.hypot(logSlopeDeviation, byVoltage, byCurrent);
+      }),
+    },
+    linkageUncertainty: Math.hypot(
+      peak.linkageDeviation / peak.linkage,
+      (uncertainty.voltage_V * elapsed) / (peak.linkage * scale.linkage),
+    ),
+  };
+}
+
+/** dt/dλ of the readings around a λ of theirs: a voltage wrong by e makes dλ/di wrong by e·dt/dλ of itself. */
+function slownessAt({ linkage, time }: ScaledReadings, lambda: number): number {
+  let low = 0;
+  let high = linkage.length - 1;
+  while (high - low > 1) {
+    const middle = (low + high) >> 1;
+    if (linkage[middle]! <= lambda) low = middle;
+    else high = middle;
+  }
+  // A few readings on either side, so that λ's own noise does not matter.
+  const [a, b] = [Math.max(low - AROUND, 0), Math.min(high + AROUND, linkage.length - 1)];
+  return (time[b]! - time[a]!) / Math.max(linkage[b]! - linkage[a]!, Number.MIN_VALUE);
+}
+
+const AROUND = 2;
+
+/** ∫ i dλ from zero to s, in coordinates of one; exact for the spline's pieces to rounding. */
+function energyAlong(curve: Curve, s: number): number {
+  let sum = 0;
+  for (let k = 0; k < curve.intervals; k++) {
+    const [a, b] = [k / curve.intervals, Math.min((k + 1) / curve.intervals, s)];
+    if (b <= a) break;
+    sum += integrate((t) => (2 * t - linkageAt(curve, t)) * (2 / (1 + Math.exp(logSlopeAt(curve, t)))), a, b, 4);
+  }
+  return sum;
+}
+
+/** s at a current in coordinates of one, kept within 0 and `end`. */
+function arcAtCurrent(curve: Curve, current: number, end: number): number {
+  const excess = (s: number) => 2 * s - linkageAt(curve, s) - current;
+  if (!(current > 0)) return 0;
+  return excess(end) <= 0 ? end : findRoot(excess, 0, end);
+}
+
+const OFFSET_WORDS: Record<OffsetSource, string> = {
+  given: 'voltage offset as given',
+  'quiet part': "voltage offset from the pulse's quiet part",
+  'closed loop': 'voltage offset from closing the loop at zero current, hysteresis neglected',
+  none: 'no quiet part and no return to zero current: voltage offset taken as zero',
+};
+
+function methodOf({ sweep, linkageUncertainty }: Points, source: OffsetSource, samples: number): Method {
+  return {
+    name: 'flux linkage by integrating v − R·i; ln(di/dλ) a spline smoothed by restricted maximum likelihood',
+    references: [
+      'G. Wahba, Ann. Statist. 13 (1985)',
+      'D. Nychka, J. Amer. Statist. Assoc. 83 (1988)',
+      'S. N. Wood, J. R. Statist. Soc. B 73 (2011)',
+      'JCGM 100',
+    ],
+    relativeError: Math.min(2 * linkageUncertainty, 1),
+    validity:
+      `the rise from zero current to ${sweep.current_A.at(-1)!.toPrecision(4)} A in ${samples} samples, nothing extrapolated; ` +
+      `${OFFSET_WORDS[source]}; resistance and gains as given; noise of samples independent; relativeError is that of the flux linkage ` +
+      'at the peak (k = 2), each differential inductance has its own standard uncertainty',
+  };
+}

@@ -1,8 +1,9 @@
 /**
  * Whether a measured value conforms to its limits, measurement uncertainty taken into account.
  *
- * JCGM 106:2012 (clauses 7 and 8), ISO 14253-1:2017, ILAC-G8:09/2019. The true value, given the measured one, is normal with the
- * measured value as its mean and the standard uncertainty as its standard deviation (JCGM 106 7.2, little prior knowledge).
+ * JCGM 106:2012 (clauses 7 and 8), ISO 14253-1:2017, ILAC-G8:09/2019. The true value, given the measured one, is normal
+ * with the measured value as its mean and the standard uncertainty as its standard deviation (JCGM 106 7.2, little
+ * prior knowledge).
  */
 import { InvalidQuantity } from '../physics/invalid-quantity.ts';
 import { acceptanceGuardBand, rejectionGuardBand } from './guard-band.ts';
@@ -16,9 +17,10 @@ export type RuleKind = 'simple-acceptance' | 'guarded-acceptance' | 'guarded-rej
  * - `guarded-acceptance` passes where P ≥ 1 − risk and else fails (8.3.2: the buyer's side);
  * - `guarded-rejection` fails where P ≤ risk and else passes (8.3.3: the supplier's side);
  * - `three-zone` passes where P ≥ 1 − risk, fails where P ≤ risk, and is inconclusive between (ISO 14253-1).
- * `risk` is the largest accepted probability of a wrong decision, from 1e-300 to 0.5. At 0.5 nothing is inconclusive: P ≥ 0.5
- * passes (P = 0.5 itself passes, except under guarded-rejection), and with one limit all rules agree with simple acceptance
- * off the limit.
+ *
+ * `risk` is the largest accepted probability of a wrong decision, from 1e-300 to 0.5. At 0.5 nothing is inconclusive:
+ * P ≥ 0.5 passes (P = 0.5 itself passes, except under guarded-rejection), and with one limit all rules agree with
+ * simple acceptance off the limit.
  */
 export interface Rule {
   readonly kind: RuleKind;
@@ -59,24 +61,24 @@ export interface Conformity {
   readonly normalisedMargin: number | null;
 }
 
-const DEFAULT_RULE: Rule = { kind: 'three-zone', risk: 0.05 };
+const DEFAULT_RISK = 0.05;
 
 /** Below this the normal tail leaves the range of doubles. */
 const SMALLEST_RISK = 1e-300;
 
 /**
  * Decides on a measured value. Values on a limit conform.
- * Throws `InvalidQuantity`: '/measured', '/standardUncertainty' (negative), '/lower' (none given, or above upper), '/upper',
- * '/rule/risk' (outside [1e-300, 0.5]).
+ * Throws `InvalidQuantity`: '/measured', '/standardUncertainty' (negative), '/lower' (none given, or above upper),
+ * '/upper', '/rule/risk' (outside [1e-300, 0.5]).
  *
  * | quantity | range tried | worst relative error | against |
  * |---|---|---|---|
- * | conformance and nonconformance probability | down to 1e-300, limits 1e-9 to 1e3 u apart | 5e-13 | mpmath, 60 digits |
- * | acceptance limits' distance from the tolerance limits | risk 1e-300 to 0.5, limits 1e-3 to 1e3 u apart | 1e-13 | mpmath |
+ * | conformance and nonconformance probability | down to 1e-300, limits 1e-300 to 1e3 u apart | 3e-13 | mpmath, 60 digits |
+ * | acceptance limits' distance from the tolerance limits | risk 1e-300 to 0.5, limits 1e-3 to 1e3 u apart | 1e-14 of max(distance, u) | mpmath, 60 digits |
  */
 export function conformity(request: ConformityRequest): Conformity {
   const { measured, standardUncertainty } = request;
-  const { kind, risk = 0.05 } = request.rule ?? DEFAULT_RULE;
+  const { kind, risk = DEFAULT_RISK }: Rule = request.rule ?? { kind: 'three-zone' };
   requireUsable(request, risk);
   const u = standardUncertainty;
   const lower = request.lower ?? Number.NEGATIVE_INFINITY;
@@ -179,8 +181,8 @@ function inwardGuardBand(kind: RuleKind, risk: number, width: number): number | 
 }
 
 /**
- * `limit` moved inward by `band` standard uncertainties, then by units in the last place until the decision itself passes it, so
- * that an acceptance limit sent back as a measured value is accepted. Undefined where no double does.
+ * `limit` moved inward by `band` standard uncertainties, then by units in the last place until the decision itself
+ * passes it, so that an acceptance limit sent back as a measured value is accepted. Undefined where no double does.
  */
 function outermostPassing(
   limit: number,

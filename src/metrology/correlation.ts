@@ -4,8 +4,8 @@ import { InvalidQuantity } from '../physics/invalid-quantity.ts';
 const PIVOT_TOLERANCE = 1e-9;
 
 /**
- * Refuses what cannot be a correlation matrix of `size` inputs: not square, not symmetric, a diagonal other than 1, an entry
- * outside [−1, 1], or not positive semidefinite. Pointers are relative to the matrix ('/0/1'; '' for the whole).
+ * Refuses what cannot be a correlation matrix of `size` inputs: not square, not symmetric, a diagonal other than 1, an
+ * entry outside [−1, 1], or not positive semidefinite. Pointers are relative to the matrix ('/0/1'; '' for the whole).
  */
 export function requireCorrelationMatrix(matrix: readonly (readonly number[])[], size: number): void {
   if (matrix.length !== size || matrix.some((row) => row.length !== size)) {

@@ -1,4 +1,5 @@
 /** Coverage intervals from trials, JCGM 101:2008 7.7: order statistics as they are, without interpolation. */
+import { sortByDistribution } from './distribution-sort.ts';
 
 export interface Interval {
   readonly lower: number;
@@ -16,14 +17,16 @@ export interface CoverageIntervals {
 const PILOT = 4096;
 
 /**
- * Both coverage intervals of `values` (M of them, finite, in any order) for the probability `coverage`; M(1 − coverage) ≥ 1.
- * Exact: the order statistics are those of a full sort, but only the two tails that the intervals can end in are sorted.
- * With q the integer part of coverage·M + 1/2 they run from the r-th smallest value to the (r + q)-th (JCGM 101 7.7.2).
+ * Both coverage intervals of the values in `samples` (M of them, finite, in any order, in any number of arrays) for the
+ * probability `coverage`; M(1 − coverage) ≥ 1. With q the integer part of coverage·M + 1/2 they run from the r-th
+ * smallest value to the (r + q)-th (JCGM 101 7.7.2). Exact: the order statistics are those of a full sort, but only the
+ * two tails that the intervals can end in are sorted.
  */
-export function coverageIntervals(values: Float64Array, coverage: number): CoverageIntervals {
-  const inside = Math.floor(coverage * values.length + 0.5);
-  const outside = values.length - inside;
-  const { lowest, highest } = tails(values, outside);
+export function coverageIntervals(samples: readonly Float64Array[], coverage: number): CoverageIntervals {
+  const count = samples.reduce((sum, { length }) => sum + length, 0);
+  const inside = Math.floor(coverage * count + 0.5);
+  const outside = count - inside;
+  const { lowest, highest } = tails(samples, count, outside) ?? sortedTails(samples, count, outside);
   // highest[r] is the value `inside` places above lowest[r].
   const interval = (r: number): Interval => ({ lower: lowest[r]!, upper: highest[r]! });
   let best = 0;
@@ -31,35 +34,61 @@ export function coverageIntervals(values: Float64Array, coverage: number): Cover
   return { symmetric: interval(Math.ceil(outside / 2) - 1), shortest: interval(best) };
 }
 
-/** The `count` smallest and the `count` largest of `values`, ascending. */
-function tails(values: Float64Array, count: number): { lowest: Float64Array; highest: Float64Array } {
-  const sorted = (all: Float64Array) => ({
-    lowest: all.subarray(0, count),
-    highest: all.subarray(all.length - count),
-  });
+interface Tails {
+  readonly lowest: Float64Array;
+  readonly highest: Float64Array;
+}
+
+/** The `size` smallest and `size` largest of `count` values, ascending; null where the guess of where to cut fails. */
+function tails(samples: readonly Float64Array[], count: number, size: number): Tails | null {
   // The trials are independent, so the first few tell where to cut, with five standard deviations to spare.
-  const pilot = values.slice(0, PILOT).sort();
-  const expected = (pilot.length * count) / values.length;
+  const pilot = samples[0]!.slice(0, PILOT).sort();
+  const expected = (pilot.length * size) / count;
   const rank = Math.ceil(expected + 5 * Math.sqrt(expected));
-  if (2 * rank >= pilot.length) return sorted(values.slice().sort());
+  if (2 * rank >= pilot.length) return null;
   const low = pilot[rank]!;
   const high = pilot[pilot.length - 1 - rank]!;
-  const below = new Float64Array(values.length);
-  const above = new Float64Array(values.length);
+  const capacity = 2 * Math.ceil((count * rank) / pilot.length);
+  const below = new Float64Array(capacity);
+  const above = new Float64Array(capacity);
   let belowCount = 0;
   let aboveCount = 0;
-  for (let i = 0; i < values.length; i++) {
-    const value = values[i]!;
-    if (value <= low) below[belowCount++] = value;
-    if (value >= high) above[aboveCount++] = value;
+  for (const array of samples) {
+    belowCount = keepBelow(array, low, below, belowCount);
+    aboveCount = keepAbove(array, high, above, aboveCount);
   }
-  // Cut too close, where the first trials were not like the others.
-  if (belowCount < count || aboveCount < count) return sorted(values.slice().sort());
+  // Wrong where the first trials were not like the others.
+  const fits = (found: number) => found >= size && found <= capacity;
+  if (!fits(belowCount) || !fits(aboveCount)) return null;
   return {
-    lowest: below.subarray(0, belowCount).sort().subarray(0, count),
-    highest: above
-      .subarray(0, aboveCount)
-      .sort()
-      .subarray(aboveCount - count),
+    lowest: sortByDistribution(below.subarray(0, belowCount)).subarray(0, size),
+    highest: sortByDistribution(above.subarray(0, aboveCount)).subarray(aboveCount - size),
   };
+}
+
+/**
+ * Appends what of `array` is at most `cut` to the first `filled` of `kept`; counts but does not store what exceeds its
+ * length.
+ */
+function keepBelow(array: Float64Array, cut: number, kept: Float64Array, filled: number): number {
+  let count = filled;
+  for (let i = 0; i < array.length; i++) if (array[i]! <= cut) kept[count++] = array[i]!;
+  return count;
+}
+
+function keepAbove(array: Float64Array, cut: number, kept: Float64Array, filled: number): number {
+  let count = filled;
+  for (let i = 0; i < array.length; i++) if (array[i]! >= cut) kept[count++] = array[i]!;
+  return count;
+}
+
+function sortedTails(samples: readonly Float64Array[], count: number, size: number): Tails {
+  const all = new Float64Array(count);
+  let filled = 0;
+  for (const array of samples) {
+    all.set(array, filled);
+    filled += array.length;
+  }
+  all.sort();
+  return { lowest: all.subarray(0, size), highest: all.subarray(count - size) };
 }

@@ -5,8 +5,9 @@ export interface Component {
 }
 
 /**
- * Effective degrees of freedom of the root sum of squares of independent components, by the Welch-Satterthwaite formula, JCGM
- * 100:2008 equation G.2b: ν = u⁴ / Σ uᵢ⁴/νᵢ. Infinity where no component has a finite number. Not truncated to an integer.
+ * Effective degrees of freedom of the root sum of squares of independent components, by the Welch-Satterthwaite
+ * formula, JCGM 100:2008 equation G.2b: ν = u⁴ / Σ uᵢ⁴/νᵢ. Infinity where no component has a finite number. Not
+ * truncated to an integer.
  */
 export function effectiveDegreesOfFreedom(components: readonly Component[]): number {
   const combined = Math.hypot(...components.map(({ standardUncertainty }) => standardUncertainty));

@@ -1,6 +1,7 @@
 /**
- * Derivatives of a function that is known only by its values, by differences extrapolated to step zero (L. F. Richardson 1911;
- * C. J. F. Ridders, Advances in Engineering Software 4 (1982) 75-76, for keeping the entry with the least estimated error).
+ * Derivatives of a function that is known only by its values, by differences extrapolated to step zero (L. F.
+ * Richardson 1911; C. J. F. Ridders, Advances in Engineering Software 4 (1982) 75-76, for keeping the entry with the
+ * least estimated error).
  */
 
 /** Values of a vector function at x; null where x is outside its domain. */
@@ -18,7 +19,10 @@ export interface Derivatives {
 
 /** Quarterings of the first step after which a side that still has no value counts as outside the domain. */
 const MOST_QUARTERINGS = 10;
-/** Rows of the extrapolation table. Smooth functions need 4 to 7, one with a bend nearby as many as it takes to get past it. */
+/**
+ * Rows of the extrapolation table. Smooth functions need 4 to 7, one with a bend nearby as many as it takes to get past
+ * it.
+ */
 const MOST_ROWS = 26;
 /** Columns of it: beyond, rounding only. */
 const MOST_COLUMNS = 8;
@@ -27,12 +31,12 @@ const GOOD_ENOUGH = 1e-13;
 const SUSPICIOUS = 1e-3;
 
 /**
- * df/dx of every component at `x`, where f(x) = `here`. Both sides are used where both are in the domain, at least at 2⁻²⁰ of
- * the step; else the one that is. Null where neither is.
+ * df/dx of every component at `x`, where f(x) = `here`. Both sides are used where both are in the domain, at least at
+ * 2⁻²⁰ of the step; else the one that is. Null where neither is.
  *
- * `step` > 0 is the largest step, of the order of the scale over which f changes or larger; `scale` > 0 the distance over which
- * the derivative is going to stand for f. Where f swings so fast that steps far beyond `scale` agree with each other by
- * accident, the quotient over `scale` tells, and the steps start again from there.
+ * `step` > 0 is the largest step, of the order of the scale over which f changes or larger; `scale` > 0 the distance
+ * over which the derivative is going to stand for f. Where f swings so fast that steps far beyond `scale` agree with
+ * each other by accident, the quotient over `scale` tells, and the steps start again from there.
  *
  * | function | worst relative error beyond the rounding of f and x | against |
  * |---|---|---|

@@ -24,8 +24,8 @@ export function acceptanceGuardBand(risk: number, width: number): number | null 
 }
 
 /**
- * How far outside each limit (inside, where negative) a measured value may lie before its probability of conformance falls to
- * `risk`; null where even the middle has no more.
+ * How far outside each limit (inside, where negative) a measured value may lie before its probability of conformance
+ * falls to `risk`; null where even the middle has no more.
  */
 export function rejectionGuardBand(risk: number, width: number): number | null {
   if (probabilityBetween(-width / 2, width / 2, width) <= risk) return null;

@@ -1,9 +1,10 @@
 /**
- * Propagation of distributions by a Monte Carlo method, JCGM 101:2008, with independent normal inputs, over JSON records.
+ * Propagation of distributions by a Monte Carlo method, JCGM 101:2008, with independent normal inputs, over JSON
+ * records.
  *
- * Trials come in blocks of a fixed size, each with a random stream of its own, so that a seed gives the same trials to the
- * last bit whatever runs the blocks, in whatever order: `recordModel` and `runBlock` in any thread, then `resultOf` over the
- * blocks in order.
+ * Trials come in blocks of a fixed size, each with a random stream of its own, so that a seed gives the same trials to
+ * the last bit whatever runs the blocks, in whatever order: `recordModel` and `runBlock` in any thread, then `resultOf`
+ * over the blocks in order.
  */
 import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
 import { bindInputs, type ExclusiveMinimum, type Input } from './record-inputs.ts';
@@ -27,18 +28,26 @@ export interface MonteCarloResult {
 }
 
 /**
- * Distribution of every output that `evaluate` computes from a JSON record some of whose numbers are uncertain: `uncertainty` maps
- * RFC 6901 pointers into `record` to standard uncertainties. Runs all trials in this thread; `recordModel`, `runBlock` and
- * `resultOf` are its parts for several.
+ * From a record to an answer among whose fields are the outputs. It is handed the same record again and again, and must
+ * keep nothing of it.
+ */
+export type Evaluate<R> = (record: R) => object;
+
+type Answer = Readonly<Record<string, unknown>>;
+
+/**
+ * Distribution of every output that `evaluate` computes from a JSON record some of whose numbers are uncertain:
+ * `uncertainty` maps RFC 6901 pointers into `record` to standard uncertainties. Runs all trials in this thread;
+ * `recordModel`, `runBlock` and `resultOf` are its parts for several.
  *
- * Throws `InvalidQuantity`: '/uncertainty/<escaped pointer>' where a pointer does not lead to a number or its uncertainty is negative;
- * '/uncertainty' where more than 0.1 % of the trials leave the model's domain; '/trials', '/seed', '/coverage'; and
- * whatever `evaluate` throws at the record as given.
+ * Throws `InvalidQuantity`: '/uncertainty/<escaped pointer>' where a pointer does not lead to a number or its
+ * uncertainty is negative; '/uncertainty' where more than 0.1 % of the trials leave the model's domain; '/trials',
+ * '/seed', '/coverage'; and whatever `evaluate` throws at the record as given.
  */
 export function monteCarloOverRecord<R extends object>(
   record: R,
   uncertainty: Readonly<Record<string, number>>,
-  evaluate: (record: R) => Readonly<Record<string, number>>,
+  evaluate: Evaluate<R>,
   { exclusiveMinimum, ...options }: MonteCarloOptions & { readonly exclusiveMinimum?: ExclusiveMinimum | undefined },
 ): MonteCarloResult {
   requireUsable(options);
@@ -72,23 +81,29 @@ export interface RecordModel {
 }
 
 /**
- * A model over a record in the form that `runBlock` takes: numbers are set in one copy of the record, which `evaluate` must not
- * keep. The outputs are those of the record as given; a trial that lacks one of them fails.
+ * A model over a record in the form that `runBlock` takes: the numbers are set in one copy of the record. Its outputs
+ * are `chosenOutputs`, or else every number in the answer to the record as given; a trial whose answer lacks one of
+ * them fails.
  */
 export function recordModel<R extends object>(
   record: R,
   uncertainty: Readonly<Record<string, number>>,
-  evaluate: (record: R) => Readonly<Record<string, number>>,
+  evaluate: Evaluate<R>,
   exclusiveMinimum?: ExclusiveMinimum,
+  chosenOutputs?: readonly string[],
 ): RecordModel {
-  const bound = within('/uncertainty', () => bindInputs(record, uncertainty, exclusiveMinimum));
-  const outputNames = Object.keys(evaluate(bound.record));
-  const model: TrialModel = (inputs, outputs) => {
-    bound.set(inputs);
-    const answer = evaluate(bound.record);
-    for (let k = 0; k < outputNames.length; k++) outputs[k] = answer[outputNames[k]!] ?? Number.NaN;
+  const { record: copy, inputs, set } = within('/uncertainty', () => bindInputs(record, uncertainty, exclusiveMinimum));
+  const estimate = evaluate(copy) as Answer;
+  const outputNames = chosenOutputs ?? Object.keys(estimate).filter((name) => typeof estimate[name] === 'number');
+  const model: TrialModel = (draws, first, outputs) => {
+    set(draws, first);
+    const answer = evaluate(copy) as Answer;
+    for (let k = 0; k < outputNames.length; k++) {
+      const output = answer[outputNames[k]!];
+      outputs[k] = typeof output === 'number' ? output : Number.NaN;
+    }
   };
-  return { model, inputs: bound.inputs, outputNames };
+  return { model, inputs, outputNames };
 }
 
 /** What all blocks of samples, in their order, come to. */

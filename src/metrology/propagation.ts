@@ -13,9 +13,13 @@ export interface Contribution {
   readonly sensitivity: number | null;
   /** |sensitivity| · standard uncertainty of the input, in the output's unit. */
   readonly standardUncertainty: number;
-  /** Part of the output's variance; all add up to 1, or are 0 where the output has none. Negative only by correlation. */
+  /**
+   * Part of the output's variance; all add up to 1, or are 0 where the output has none. Negative only by correlation.
+   */
   readonly share: number;
-  /** The differences that the sensitivity was taken from: one-sided at a border of the model's domain. Null without one. */
+  /**
+   * The differences that the sensitivity was taken from: one-sided at a border of the model's domain. Null without one.
+   */
   readonly difference: DifferenceScheme | null;
 }
 
@@ -37,9 +41,9 @@ export type VectorModel = (inputs: readonly number[]) => readonly number[];
 /**
  * Standard uncertainty of what `model` computes from `inputs`, and each input's part in it.
  *
- * Throws `InvalidQuantity`: '/<name>' (a JSON pointer token) for an input whose uncertainty is negative or not finite, or that
- * the model takes no step away from in either direction; '/correlation…' for an impossible matrix; and whatever the model
- * itself throws at the estimates.
+ * Throws `InvalidQuantity`: '/<name>' (a JSON pointer token) for an input whose uncertainty is negative or not finite,
+ * or that the model takes no step away from in either direction; '/correlation…' for an impossible matrix; and whatever
+ * the model itself throws at the estimates.
  */
 export function propagate(model: ScalarModel, inputs: readonly Input[], options?: PropagationOptions): Propagated;
 export function propagate(model: VectorModel, inputs: readonly Input[], options?: PropagationOptions): Propagated[];
@@ -56,12 +60,13 @@ export function propagate(
 }
 
 /**
- * The same over a JSON record: `uncertainty` maps RFC 6901 pointers into `record` to standard uncertainties, `evaluate` computes
- * named outputs from it. The outputs are those of the record as given; a step at which one of them is missing or not finite
- * counts as outside the domain. `evaluate` is handed one and the same copy with numbers replaced, and must keep nothing of it.
+ * The same over a JSON record: `uncertainty` maps RFC 6901 pointers into `record` to standard uncertainties, `evaluate`
+ * computes named outputs from it. The outputs are those of the record as given; a step at which one of them is missing
+ * or not finite counts as outside the domain. `evaluate` is handed one and the same copy with numbers replaced, and
+ * must keep nothing of it.
  *
- * Throws `InvalidQuantity` '/uncertainty/<escaped pointer>' where a pointer does not lead to a number, its uncertainty is
- * negative, or no step away from it can be taken; and whatever `evaluate` throws at the record as given.
+ * Throws `InvalidQuantity` '/uncertainty/<escaped pointer>' where a pointer does not lead to a number, its uncertainty
+ * is negative, or no step away from it can be taken; and whatever `evaluate` throws at the record as given.
  */
 export function propagateOverRecord<R extends object>(
   record: R,
@@ -128,8 +133,8 @@ function sensitivities(model: VectorModel, estimate: readonly number[], inputs: 
       throw error;
     }
   };
-  // An eighth of the value is near the scale of most laws and stays on its side of zero. Where the uncertainty exceeds the
-  // value, as at an offset of zero, it is the only scale known. Extrapolation finds what is smaller.
+  // An eighth of the value is near the scale of most laws and stays on its side of zero. Where the uncertainty exceeds
+  // the value, as at an offset of zero, it is the only scale known. Extrapolation finds what is smaller.
   const step = standardUncertainty > Math.abs(value) ? standardUncertainty : Math.abs(value) / 8;
   const found = derivatives(along, value, estimate, { step, scale: standardUncertainty });
   if (found) return found;
@@ -139,7 +144,9 @@ function sensitivities(model: VectorModel, estimate: readonly number[], inputs: 
   );
 }
 
-/** Square root of the quadratic form Σ Σ tᵢ rᵢⱼ tⱼ, and each row's part in it. Scaled, so that squares do not overflow. */
+/**
+ * Square root of the quadratic form Σ Σ tᵢ rᵢⱼ tⱼ, and each row's part in it. Scaled, so that squares do not overflow.
+ */
 function combine(terms: readonly number[], correlation?: readonly (readonly number[])[]) {
   const scale = Math.max(0, ...terms.map(Math.abs));
   if (scale === 0) return { standardUncertainty: 0, shares: terms.map(() => 0) };

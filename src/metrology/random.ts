@@ -1,11 +1,12 @@
 /**
  * Repeatable streams of standard normal numbers.
  *
- * Uniform bits: xoshiro128++ (D. Blackman, S. Vigna, "Scrambled linear pseudorandom number generators", ACM Transactions on
- * Mathematical Software 47 (2021) 36), period 2¹²⁸ − 1, made for 32-bit arithmetic. Stream k of a seed starts k · 2⁶⁴ steps on, so
- * that streams cannot overlap and a stream does not depend on who draws the others.
- * Normals: the ziggurat of G. Marsaglia and W. W. Tsang (Journal of Statistical Software 5 (2000) 8) with 256 layers, with all
- * 53 bits of the double in each draw and the layer, sign and position from different bits (J. A. Doornik 2005, *from memory*).
+ * Uniform bits: xoshiro128++ (D. Blackman, S. Vigna, "Scrambled linear pseudorandom number generators", ACM
+ * Transactions on Mathematical Software 47 (2021) 36), period 2¹²⁸ − 1, made for 32-bit arithmetic. Stream k of a seed
+ * starts k · 2⁶⁴ steps on, so that streams cannot overlap and a stream does not depend on who draws the others.
+ * Normals: the ziggurat of G. Marsaglia and W. W. Tsang (Journal of Statistical Software 5 (2000) 8) with 256 layers,
+ * with all 53 bits of the double in each draw, and layer and position from different bits (J. A. Doornik 2005, *from
+ * memory*).
  */
 
 /** x⁽²⁶⁴⁾ modulo the generator's characteristic polynomial, lowest power first; the authors' constants. */
@@ -64,8 +65,12 @@ const TAIL_START = 3.654152885361009;
 const LAYER_AREA = 0.004928673233974655;
 
 interface Ziggurat {
-  /** Right edges of the layers from the base up; the base's is that of a box of its area, and a last 0 closes the list. */
+  /**
+   * Right edges of the layers from the base up; the base's is that of a box of its area, and a last 0 closes the list.
+   */
   readonly edges: Float64Array;
+  /** The same, times 2⁻⁵²: what an integer position is multiplied by. */
+  readonly scales: Float64Array;
   /** exp(−edge²/2). */
   readonly heights: Float64Array;
 }
@@ -82,15 +87,15 @@ function buildZiggurat(): Ziggurat {
     edges[i] = Math.sqrt(-2 * Math.log(heights[i]!));
   }
   heights[LAYERS] = 1;
-  return { edges, heights };
+  return { edges, scales: edges.map((edge) => edge * 2 ** -52), heights };
 }
 
-const { edges: EDGES, heights: HEIGHTS } = buildZiggurat();
+const { edges: EDGES, scales: SCALES, heights: HEIGHTS } = buildZiggurat();
 
 /**
- * Fills `out` with independent standard normal numbers, 2⁻⁵³ of a layer apart and, in the tail, out to 13 standard deviations.
- * The generator's state is kept in local variables, which halves the time; only the hundredth draw that does not fall
- * within its layer's box leaves the loop.
+ * Fills `out` with independent standard normal numbers, 2⁻⁵² of a layer apart and, in the tail, out to 13 standard
+ * deviations. The generator's state is kept in local variables, which halves the time; only the hundredth draw that
+ * does not fall within its layer's box leaves the loop.
  */
 export function fillNormals(stream: Stream, out: Float64Array): void {
   let s0 = stream[0]!;
@@ -118,13 +123,12 @@ export function fillNormals(stream: Stream, out: Float64Array): void {
     s2 ^= shifted;
     s3 = (s3 << 11) | (s3 >>> 21);
 
-    // 53 bits: 32 of the second word above the 21 highest of the first, whose lowest nine choose layer and sign.
-    const position = ((high >>> 0) * 2097152 + (low >>> 11)) * 2 ** -53;
+    // A signed integer of 53 bits: 32 of the second word above the 21 highest of the first, whose lowest eight choose
+    // the layer.
     const layer = low & 255;
-    const x = position * EDGES[layer]!;
-    const sign = 1 - ((low >>> 7) & 2);
-    if (x < EDGES[layer + 1]!) {
-      out[i] = sign * x;
+    const x = (high * 2097152 + (low >>> 11)) * SCALES[layer]!;
+    if (Math.abs(x) < EDGES[layer + 1]!) {
+      out[i] = x;
       continue;
     }
     stream[0] = s0;
@@ -137,7 +141,7 @@ export function fillNormals(stream: Stream, out: Float64Array): void {
     s2 = stream[2]!;
     s3 = stream[3]!;
     if (beside === null) i--;
-    else out[i] = sign * beside;
+    else out[i] = beside;
   }
   stream[0] = s0;
   stream[1] = s1;
@@ -147,7 +151,7 @@ export function fillNormals(stream: Stream, out: Float64Array): void {
 
 /** What a draw beyond its layer's box comes to: a number under the curve, or null where it has to be drawn again. */
 function outsideBox(stream: Stream, layer: number, x: number): number | null {
-  if (layer === 0) return tail(stream);
+  if (layer === 0) return Math.sign(x) * tail(stream);
   const floor = HEIGHTS[layer]!;
   return floor + uniform(stream) * (HEIGHTS[layer + 1]! - floor) < Math.exp((-x * x) / 2) ? x : null;
 }

@@ -1,11 +1,13 @@
 /**
- * A million Monte Carlo trials of the energy ½·L·I² in a solenoid, diameter, length and current uncertain, on two worker threads, and the same
- * trials vectorised in numpy and scipy in the same run. Prints the ratio of the times, ours over numpy's.
+ * A million Monte Carlo trials of the energy ½·L·I² in a solenoid, diameter, length and current uncertain, on two
+ * worker threads, and the same trials vectorised in numpy and scipy in the same run. Prints the ratio of the times,
+ * ours over numpy's.
  *
  * node test/bench/monte-carlo.bench.ts
  */
 import { spawnSync } from 'node:child_process';
 import { once } from 'node:events';
+import { loadavg } from 'node:os';
 import { Worker } from 'node:worker_threads';
 import { type MonteCarloResult, resultOf } from '../../src/metrology/monte-carlo.ts';
 import { blocksOf } from '../../src/metrology/trials.ts';
@@ -20,6 +22,7 @@ const UNCERTAINTY = { diameter_m: 1e-5, length_m: 1e-4, current_A: 0.02 };
 
 interface Numpy {
   readonly milliseconds: readonly number[];
+  readonly processorMilliseconds: readonly number[];
   readonly numpy: string;
   readonly mean: number;
   readonly standardUncertainty: number;
@@ -48,13 +51,17 @@ async function ours(pool: readonly Worker[], route: Task['route'], seed: number)
 
 async function timed(pool: readonly Worker[], route: Task['route']) {
   const milliseconds: number[] = [];
+  const processorMilliseconds: number[] = [];
   let result = await ours(pool, route, 0);
   for (let seed = 1; seed <= REPETITIONS; seed++) {
+    const before = process.cpuUsage();
     const start = performance.now();
     result = await ours(pool, route, seed);
     milliseconds.push(performance.now() - start);
+    const { user, system } = process.cpuUsage(before);
+    processorMilliseconds.push((user + system) / 1e3);
   }
-  return { milliseconds, energy: result.outputs.energy_J! };
+  return { milliseconds, processorMilliseconds, energy: result.outputs.energy_J! };
 }
 
 function numpy(): Numpy | null {
@@ -76,8 +83,19 @@ function median(values: readonly number[]): number {
   return values.toSorted((a, b) => a - b)[Math.floor(values.length / 2)]!;
 }
 
-function line(name: string, milliseconds: readonly number[]): string {
-  return `${name.padEnd(44)} median ${median(milliseconds).toFixed(0)} ms, least ${Math.min(...milliseconds).toFixed(0)} ms`;
+const least = (values: readonly number[]) => Math.min(...values);
+
+interface Times {
+  readonly milliseconds: readonly number[];
+  /** Of all threads together. */
+  readonly processorMilliseconds: readonly number[];
+}
+
+function line(name: string, { milliseconds, processorMilliseconds }: Times): string {
+  const numbers = [median(milliseconds), least(milliseconds), median(processorMilliseconds)].map((ms) =>
+    ms.toFixed(0).padStart(5),
+  );
+  return `${name.padEnd(46)} median ${numbers[0]} ms, least ${numbers[1]} ms, processor time ${numbers[2]} ms`;
 }
 
 const pool = Array.from({ length: THREADS }, () => new Worker(new URL('monte-carlo.worker.ts', import.meta.url)));
@@ -88,20 +106,25 @@ const theirs = numpy();
 const calculation = await timed(pool, 'calculation');
 await Promise.all(pool.map((worker) => worker.terminate()));
 
-console.log(`${TRIALS} trials of a solenoid's energy, ${THREADS} threads, from request to summary:`);
-console.log(line('½·L·I², record in, one output', formula.milliseconds));
-console.log(line('the whole energy calculation, all its outputs', calculation.milliseconds));
+console.log(
+  `${TRIALS} trials of a solenoid's energy, ${THREADS} threads, from request to summary (load ${loadavg()[0]!.toFixed(1)}):`,
+);
+console.log(line('½·L·I², record in, one output', formula));
+console.log(line('the whole energy calculation, all its outputs', calculation));
 if (theirs === null) {
   console.log('python3 with numpy and scipy is not here: nothing to compare with.');
 } else {
-  console.log(line(`numpy ${theirs.numpy}, one output`, theirs.milliseconds));
+  console.log(line(`numpy ${theirs.numpy}, one output`, theirs));
   const difference = Math.abs(formula.energy.mean - theirs.mean) / theirs.standardUncertainty;
+  const chance = Math.SQRT2 / Math.sqrt(TRIALS);
   console.log(
-    `means differ by ${difference.toExponential(1)} standard uncertainties (chance: ${(Math.SQRT2 / Math.sqrt(TRIALS)).toExponential(1)})`,
+    `means differ by ${difference.toExponential(1)} standard uncertainties (chance: ${chance.toExponential(1)})`,
   );
-  const ratio = (of: (values: readonly number[]) => number, of1 = formula) =>
-    (of(of1.milliseconds) / of(theirs.milliseconds)).toFixed(2);
-  const least = (values: readonly number[]) => Math.min(...values);
-  console.log(`ratio to numpy (median; least): ${ratio(median)}; ${ratio(least)}`);
-  console.log(`  of the whole calculation:     ${ratio(median, calculation)}; ${ratio(least, calculation)}`);
+  for (const [name, times] of [
+    ['½·L·I²', formula],
+    ['the whole calculation', calculation],
+  ] as const) {
+    const ratios = [median, least].map((of) => (of(times.milliseconds) / of(theirs.milliseconds)).toFixed(2));
+    console.log(`ratio to numpy, ${name}: ${ratios[0]} of the medians, ${ratios[1]} of the least`);
+  }
 }

@@ -3,10 +3,14 @@ import { parentPort } from 'node:worker_threads';
 import { recordModel } from '../../src/metrology/monte-carlo.ts';
 import { type Block, runBlock } from '../../src/metrology/trials.ts';
 import { energy } from '../../src/physics/calculations/energy.ts';
-import { type Solenoid, solenoidInductance } from '../../src/physics/coils/solenoid.ts';
+import { currentSheetInductance_H } from '../../src/physics/coils/nagaoka.ts';
+import type { Solenoid } from '../../src/physics/coils/solenoid.ts';
 
 export interface Task {
-  /** `formula`: ½·L·I² alone; `calculation`: the whole energy calculation of the service, six outputs. */
+  /**
+   * `formula`: ½·L·I² alone, as numpy computes it; `calculation`: the service's energy calculation, with all it
+   * answers.
+   */
   readonly route: 'formula' | 'calculation';
   readonly coil: Solenoid;
   readonly current_A: number;
@@ -19,8 +23,8 @@ function modelOf({ route, coil, current_A, uncertainty: u }: Task) {
     return recordModel(
       { coil, current_A },
       { '/coil/diameter_m': u.diameter_m, '/coil/length_m': u.length_m, '/current_A': u.current_A },
-      (record) => ({
-        energy_J: 0.5 * solenoidInductance(record.coil).inductance_H * record.current_A * record.current_A,
+      ({ coil: { turns, diameter_m, length_m }, current_A }) => ({
+        energy_J: 0.5 * currentSheetInductance_H(turns, diameter_m, length_m) * current_A * current_A,
       }),
     );
   }
@@ -31,7 +35,9 @@ function modelOf({ route, coil, current_A, uncertainty: u }: Task) {
       '/inductor/coil/length_m': u.length_m,
       '/current_A': u.current_A,
     },
-    (record) => energy.mainOutputs(energy.calculate(record)),
+    energy.calculate,
+    undefined,
+    Object.keys(energy.mainOutputs(energy.calculate({ inductor: { coil }, current_A }))),
   );
 }
 

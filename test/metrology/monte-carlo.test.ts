@@ -154,6 +154,23 @@ describe('repeatability', () => {
   });
 });
 
+describe('outputs', () => {
+  const answer = ({ coil, current_A }: typeof RECORD) => ({
+    method: 'closed form',
+    ratio: coil.diameter_m / coil.length_m,
+    square: current_A ** 2,
+  });
+
+  it('are the numbers of the answer, or those chosen', () => {
+    const all = monteCarloOverRecord(RECORD, UNCERTAINTY, answer, { trials: 1000, seed: 11 });
+    expect(Object.keys(all.outputs)).toEqual(['ratio', 'square']);
+    const { model, inputs, outputNames } = recordModel(RECORD, UNCERTAINTY, answer, undefined, ['square']);
+    const samples = runBlock(model, inputs, outputNames.length, { seed: 11, index: 0, size: 1000 });
+    const chosen = resultOf(outputNames, [samples], { trials: 1000, seed: 11 });
+    expect(chosen.outputs).toEqual({ square: all.outputs.square });
+  });
+});
+
 describe('trials outside the domain', () => {
   const above = (limit: number) => (r: { x: number }) => {
     if (r.x <= limit) throw new InvalidQuantity('/x', 'too small');

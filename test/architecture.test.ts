@@ -30,7 +30,7 @@ const LIBRARIES: Record<string, RegExp> = {
   metrology: /^@stdlib\/stats-/,
   approval: /^(canonicalize|node:crypto)$/,
   storage: /^(kysely|kysely\/migration|pg|node:.*)$/,
-  http: /^(fastify|fastify-type-provider-zod|@fastify\/.*|zod|prom-client|csv-parse|node:.*)$/,
+  http: /^(fastify|fastify-type-provider-zod|@fastify\/.*|zod|prom-client|csv-parse(\/sync)?|node:.*)$/,
   workers: /^(piscina|node:.*)$/,
   config: /^zod$/,
   compose: /^(fastify|pino|piscina|node:.*)$/,

@@ -52,6 +52,10 @@ export interface UnitStore {
    */
   record(batches: readonly UnitBatch[]): Promise<Recording[][]>;
   list(lot: string, filter: UnitFilter): Promise<RecordedUnit[]>;
+  /** The units recorded last, the latest first. */
+  last(lot: string, limit: number): Promise<RecordedUnit[]>;
+  /** The last recorded measurement of a serial. */
+  ofSerial(lot: string, serial: string): Promise<RecordedUnit | undefined>;
   /** Position of the lot's last recorded unit; 0 where there is none. */
   lastPosition(lot: string): Promise<number>;
   counts(lot: string): Promise<UnitCounts>;

@@ -1,6 +1,6 @@
 import type { JudgedUnit, UnitQuantity } from '../evidence/judged-unit.ts';
 import { mergeRolled, NOTHING_ROLLED_UP, type Rolled, type RollupPart } from '../evidence/rollup.ts';
-import type { Recording, Rollup, UnitBatch, UnitEntry, UnitStore } from '../evidence/unit-store.ts';
+import type { RecordedUnit, Recording, Rollup, UnitBatch, UnitEntry, UnitStore } from '../evidence/unit-store.ts';
 import type { Database } from './database.ts';
 
 const OUT_OF_CALIBRATION = 'out-of-calibration';
@@ -10,6 +10,7 @@ type Transaction = Database['db'];
 /** Measured units in the store's `units`, `unit_counts` and `rollups` tables. */
 export function unitStore(database: Database): UnitStore {
   const { db } = database;
+  const select = db.selectFrom('units').select(['position', 'unit', 'judged']);
   return {
     // Exclusive by lot: rollups are read, merged and written, and two writers of one lot would lose each other's units.
     record: (batches) =>
@@ -29,12 +30,22 @@ export function unitStore(database: Database): UnitStore {
         .where('lot', '=', lot)
         .where('position', '>', after);
       if (outcome !== undefined) query = query.where('outcome', '=', outcome);
-      const rows = await query.orderBy('position').limit(limit).execute();
-      return rows.map(({ position, unit, judged }) => ({
-        position,
-        unit: JSON.parse(unit),
-        judged: JSON.parse(judged),
-      }));
+      return (await query.orderBy('position').limit(limit).execute()).map(recordedUnit);
+    },
+
+    last: async (lot, limit) => {
+      const rows = await select.where('lot', '=', lot).orderBy('position', 'desc').limit(limit).execute();
+      return rows.map(recordedUnit);
+    },
+
+    ofSerial: async (lot, serial) => {
+      const row = await select
+        .where('lot', '=', lot)
+        .where('serial', '=', serial)
+        .orderBy('position', 'desc')
+        .limit(1)
+        .executeTakeFirst();
+      return row && recordedUnit(row);
     },
 
     lastPosition: async (lot) => {
@@ -77,6 +88,12 @@ export function unitStore(database: Database): UnitStore {
     },
   };
 }
+
+const recordedUnit = (row: { position: number; unit: string; judged: string }): RecordedUnit => ({
+  position: row.position,
+  unit: JSON.parse(row.unit),
+  judged: JSON.parse(row.judged),
+});
 
 async function recordBatch(transaction: Transaction, { lot, entries, rollUp }: UnitBatch): Promise<Recording[]> {
   const recordings: Recording[] = [];

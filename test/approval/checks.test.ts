@@ -369,6 +369,7 @@ function changed(request: ApprovalRequest, pointer: string, value: number): Appr
 
 describe('the list of checks', () => {
   it('is tested whole', () => {
-    expect([...CHECK_NAMES].filter((name) => !CASES.some(({ check }) => check === name))).toEqual([]);
+    const elsewhere = ['lot-capability', 'calibration']; // lots.test.ts
+    expect(CHECK_NAMES.filter((name) => !CASES.some(({ check }) => check === name))).toEqual(elsewhere);
   });
 });

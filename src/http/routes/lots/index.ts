@@ -1,6 +1,7 @@
 import type { FastifyInstance } from 'fastify';
 import type { UnitDesk } from '../../../approval/measuring.ts';
 import { lotEvents } from './events.ts';
+import { getFigure } from './figures.ts';
 import { getLot } from './get-lot.ts';
 import { getUnits } from './get-units.ts';
 import { postUnits } from './post-units.ts';
@@ -14,5 +15,6 @@ export function lots(app: FastifyInstance, desk: UnitDesk): void {
   getUnits(app, desk);
   getStatistics(app, desk);
   getTrend(app, desk);
+  getFigure(app, desk);
   lotEvents(app, desk);
 }

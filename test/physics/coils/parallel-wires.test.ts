@@ -14,7 +14,7 @@ describe('go and return of round wires', () => {
     for (const [length, radius, distance, integral] of reference.difference as [number, number, number, number][]) {
       const expected = (VACUUM_PERMEABILITY_H_PER_M / (2 * Math.PI)) * integral;
       const error = Math.abs(line(length, distance, 2 * radius).inductance_H / expected - 1);
-      expect(error).toBeLessThan(length / radius < 0.1 ? 1e-11 : 2e-14);
+      expect(error).toBeLessThan(length / radius < 0.1 ? 2e-11 : 2e-14);
     }
   });
 

@@ -13,17 +13,17 @@ export const LIMITS: readonly RequestedLimit[] = [
   {
     pointer: '/part/drawing/inductance',
     given: ({ part }) => part.drawing !== undefined,
-    checks: ['construction-inductance', 'measured-inductance'],
+    checks: ['construction-inductance', 'measured-inductance', 'lot-capability'],
   },
   {
     pointer: '/part/drawing/saturation',
     given: ({ part }) => part.drawing?.saturation !== undefined,
-    checks: ['saturation-current', 'measured-saturation'],
+    checks: ['saturation-current', 'measured-saturation', 'lot-capability'],
   },
   {
     pointer: '/part/drawing/resistance',
     given: ({ part }) => part.drawing?.resistance !== undefined,
-    checks: ['winding-resistance', 'measured-resistance'],
+    checks: ['winding-resistance', 'measured-resistance', 'lot-capability'],
   },
   {
     pointer: '/duty/required/inductanceAtPeak_H',

@@ -7,7 +7,7 @@
  * over the blocks in order.
  */
 import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
-import { bindInputs, type ExclusiveMinimum, type Input } from './record-inputs.ts';
+import { bindInputs, type ExclusiveMinimum, type Input, type Setter } from './record-inputs.ts';
 import { type Distribution, summarise } from './summary.ts';
 import { blocksOf, runBlock, type TrialModel } from './trials.ts';
 
@@ -95,15 +95,32 @@ export function recordModel<R extends object>(
   const { record: copy, inputs, set } = within('/uncertainty', () => bindInputs(record, uncertainty, exclusiveMinimum));
   const estimate = evaluate(copy) as Answer;
   const outputNames = chosenOutputs ?? Object.keys(estimate).filter((name) => typeof estimate[name] === 'number');
-  const model: TrialModel = (draws, first, outputs) => {
-    set(draws, first);
-    const answer = evaluate(copy) as Answer;
-    for (let k = 0; k < outputNames.length; k++) {
-      const output = answer[outputNames[k]!];
-      outputs[k] = typeof output === 'number' ? output : Number.NaN;
-    }
+  return {
+    model: trialModel(copy, set, evaluate as (record: R) => Record<string, number>, outputNames),
+    inputs,
+    outputNames,
   };
-  return { model, inputs, outputNames };
+}
+
+function trialModel<R>(
+  copy: R,
+  set: Setter,
+  evaluate: (record: R) => Readonly<Record<string, number>>,
+  outputNames: readonly string[],
+): TrialModel {
+  const [only, ...others] = outputNames;
+  if (only !== undefined && others.length === 0) {
+    // Without a loop over names a compiler that inlines `evaluate` never makes its answer: nothing to collect.
+    return (draws, first, outputs) => {
+      set(draws, first);
+      outputs[0] = evaluate(copy)[only] ?? Number.NaN;
+    };
+  }
+  return (draws, first, outputs) => {
+    set(draws, first);
+    const answer = evaluate(copy);
+    for (let k = 0; k < outputNames.length; k++) outputs[k] = answer[outputNames[k]!] ?? Number.NaN;
+  };
 }
 
 /** What all blocks of samples, in their order, come to. */

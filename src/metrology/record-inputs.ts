@@ -18,7 +18,7 @@ export interface Input {
 export type ExclusiveMinimum = (pointer: string) => number | undefined;
 
 /** Sets numbers to the values from place `first` (default 0) on. */
-type Setter = (values: ArrayLike<number>, first?: number) => void;
+export type Setter = (values: ArrayLike<number>, first?: number) => void;
 
 export interface BoundRecord<R> {
   /** A copy of the record, always the same object, holding the values last set. */

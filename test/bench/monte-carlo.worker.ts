@@ -18,27 +18,32 @@ export interface Task {
   readonly blocks: readonly Block[];
 }
 
+interface Energised {
+  readonly coil: Solenoid;
+  readonly current_A: number;
+}
+
+function energy_J({ coil: { turns, diameter_m, length_m }, current_A }: Energised) {
+  return { energy_J: 0.5 * currentSheetInductance_H(turns, diameter_m, length_m) * current_A * current_A };
+}
+
 function modelOf({ route, coil, current_A, uncertainty: u }: Task) {
   if (route === 'formula') {
-    return recordModel(
-      { coil, current_A },
-      { '/coil/diameter_m': u.diameter_m, '/coil/length_m': u.length_m, '/current_A': u.current_A },
-      ({ coil: { turns, diameter_m, length_m }, current_A }) => ({
-        energy_J: 0.5 * currentSheetInductance_H(turns, diameter_m, length_m) * current_A * current_A,
-      }),
-    );
-  }
-  return recordModel(
-    { inductor: { coil }, current_A },
-    {
-      '/inductor/coil/diameter_m': u.diameter_m,
-      '/inductor/coil/length_m': u.length_m,
+    const uncertainty = {
+      '/coil/diameter_m': u.diameter_m,
+      '/coil/length_m': u.length_m,
       '/current_A': u.current_A,
-    },
-    energy.calculate,
-    undefined,
-    Object.keys(energy.mainOutputs(energy.calculate({ inductor: { coil }, current_A }))),
-  );
+    };
+    return recordModel({ coil, current_A }, uncertainty, energy_J);
+  }
+  const request = { inductor: { coil }, current_A };
+  const uncertainty = {
+    '/inductor/coil/diameter_m': u.diameter_m,
+    '/inductor/coil/length_m': u.length_m,
+    '/current_A': u.current_A,
+  };
+  const outputNames = Object.keys(energy.mainOutputs(energy.calculate(request)));
+  return recordModel(request, uncertainty, energy.calculate, undefined, outputNames);
 }
 
 parentPort!.on('message', (task: Task) => {

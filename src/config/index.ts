@@ -39,7 +39,7 @@ export const Environment = z.object({
     .min(100)
     .max(600_000)
     .default(30_000)
-    .describe('time a request may take to arrive, and then to be answered'),
+    .describe('time a request may be idle, and may take to be answered'),
   REQUESTS_IN_FLIGHT: z.coerce
     .number()
     .int()

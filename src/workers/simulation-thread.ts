@@ -1,19 +1,37 @@
-import { recordModel } from '../metrology/monte-carlo.ts';
+import { type Evaluate, recordModel } from '../metrology/monte-carlo.ts';
 import { runBlock } from '../metrology/trials.ts';
+import type { Calculation } from '../physics/calculations/calculation.ts';
 import { calculationOf, exclusiveMinimum } from '../physics/calculations/index.ts';
-import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
 import type { SimulationShare, SimulationTask } from './simulation.ts';
 
 /** What a compute thread does: some blocks of trials of a calculation. A refused quantity crosses to the caller as data. */
 export default function run({ calculation, request, uncertainty, blocks }: SimulationTask): SimulationShare {
-  const { calculate, mainOutputs } = calculationOf(calculation);
   try {
-    const evaluate = (record: object) => mainOutputs(calculate(record));
-    const { model, inputs, outputNames } = recordModel(request, uncertainty, evaluate, exclusiveMinimum);
-    const samples = blocks.map((block) => runBlock(model, inputs, outputNames.length, block));
+    const { model, inputs, outputNames } = modelOf(calculationOf(calculation), request, uncertainty);
+    const samples = within('/uncertainty', () =>
+      blocks.map((block) => runBlock(model, inputs, outputNames.length, block)),
+    );
     return { outputNames, samples };
   } catch (error) {
     if (error instanceof InvalidQuantity) return { refused: { pointer: error.pointer, detail: error.detail } };
     throw error;
   }
+}
+
+/**
+ * The model of a calculation's main outputs. Where they are plain fields of the answer, as most are, they are read from it as it
+ * is: gathering them anew in each of a million trials would cost more than many a calculation.
+ */
+function modelOf(
+  { calculate, mainOutputs }: Calculation<object, object>,
+  request: object,
+  uncertainty: Readonly<Record<string, number>>,
+) {
+  const answer = calculate(request) as Readonly<Record<string, unknown>>;
+  const names = Object.keys(mainOutputs(answer));
+  if (names.every((name) => typeof answer[name] === 'number')) {
+    return recordModel(request, uncertainty, calculate as Evaluate<object>, exclusiveMinimum, names);
+  }
+  return recordModel(request, uncertainty, (record) => mainOutputs(calculate(record)), exclusiveMinimum);
 }

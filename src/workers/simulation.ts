@@ -3,7 +3,7 @@ import { Piscina } from 'piscina';
 import type { Simulation, Simulator } from '../approval/simulator.ts';
 import { requireUsable, resultOf } from '../metrology/monte-carlo.ts';
 import { type Block, blocksOf } from '../metrology/trials.ts';
-import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
 
 /** What a thread is told: some blocks of a simulation. */
 export interface SimulationTask extends Omit<Simulation, 'options'> {
@@ -44,7 +44,7 @@ export function createSimulator(threads = Math.max(1, availableParallelism())): 
           samples[stripes[stripe]![k]!.index] = block;
         });
       });
-      return resultOf(outputNames, samples, options);
+      return within('/uncertainty', () => resultOf(outputNames, samples, options));
     },
     close: async () => pool?.destroy(),
   };

@@ -1,4 +1,5 @@
 import type { FluxCharacteristic } from './characteristic.ts';
+import type { Cored } from './characteristics/cored.ts';
 import { coredCharacteristic } from './characteristics/cored.ts';
 import { linearCharacteristic } from './characteristics/linear.ts';
 import { type CoaxialLine, coaxialLineInductance } from './coils/coaxial-line.ts';
@@ -10,7 +11,6 @@ import { type RoundLoop, roundLoopInductance } from './coils/round-loop.ts';
 import { type Solenoid, solenoidInductance } from './coils/solenoid.ts';
 import { type StraightWire, straightWireInductance } from './coils/straight-wire.ts';
 import { type Toroid, toroidInductance } from './coils/toroid.ts';
-import type { Cored } from './characteristics/cored.ts';
 import type { Method } from './method.ts';
 
 /** A winding without a saturating core: its inductance is one number. */

@@ -11,7 +11,7 @@ import { openPostgres } from './storage/postgres.ts';
 import { registryStore } from './storage/registry.ts';
 import { openSqlite } from './storage/sqlite.ts';
 import { unitStore } from './storage/units.ts';
-import { createSimulator } from './workers/simulation.ts';
+import { createCompute } from './workers/compute.ts';
 
 /** The service, wired: an unstarted server and what has to be disposed of after it. */
 export interface Service {
@@ -40,18 +40,18 @@ export async function compose(config: Config, overrides: Overrides = {}): Promis
     store: approvalStore(database),
     registry: registryStore(database),
     units: groupCommit(unitStore(database)),
+    compute: createCompute(),
     engineVersion: version,
     now: overrides.now ?? (() => new Date()),
     newId: overrides.newId ?? randomUUIDv7,
   };
-  const simulator = createSimulator();
-  const app = await createApp({ version, logger, limits: config.limits, desk, simulator });
+  const app = await createApp({ version, logger, limits: config.limits, desk });
   return {
     app,
     desk,
     dispose: async () => {
       await app.close();
-      await simulator.close();
+      await desk.compute.close();
       await database.close();
     },
   };

@@ -1,13 +1,14 @@
 import type { UnitStore } from '../evidence/unit-store.ts';
 import type { Caution } from './cautions.ts';
 import type { CheckResult } from './check-result.ts';
+import type { Compute } from './compute.ts';
 import type { Duty } from './duty.ts';
 import { evaluate } from './evaluate.ts';
 import type { Part } from './part.ts';
 import { type Digests, digestOf, seal } from './record.ts';
 import { type Reference, resolveRequest } from './references.ts';
 import type { Registry } from './registry.ts';
-import type { ApprovalRequest, Evidence } from './request.ts';
+import type { Evidence, SentRequest } from './request.ts';
 import type { ApprovalStore, Recorded } from './store.ts';
 import type { Verdict } from './verdict.ts';
 
@@ -34,6 +35,7 @@ export interface ApprovalDesk {
   readonly store: ApprovalStore;
   readonly registry: Registry;
   readonly units: UnitStore;
+  readonly compute: Compute;
   readonly engineVersion: string;
   readonly now: () => Date;
   readonly newId: () => string;
@@ -43,7 +45,7 @@ export interface ApprovalDesk {
  * Evaluates a request, with what it refers to put in its place, and records the approval; resolves once the record is durable.
  * The input digest is of the request as it was sent.
  */
-export async function approve(desk: ApprovalDesk, asSent: ApprovalRequest, idempotencyKey?: string): Promise<Recorded> {
+export async function approve(desk: ApprovalDesk, asSent: SentRequest, idempotencyKey?: string): Promise<Recorded> {
   const { request, references } = await resolveRequest(asSent, desk);
   const { verdict, reasons, checks, cautions } = evaluate(request);
   const engine = { version: desk.engineVersion };

@@ -3,9 +3,10 @@ import { type JudgedUnit, judgeUnit, type Yardstick } from '../evidence/judged-u
 import type { Lot } from '../evidence/lot.ts';
 import type { Rig } from '../evidence/rig.ts';
 import { rollUp } from '../evidence/rollup.ts';
-import { onRig, type Unit } from '../evidence/unit.ts';
+import { onRig, type SentUnit, type Unit, withSweep } from '../evidence/unit.ts';
 import type { UnitEntry, UnitStore } from '../evidence/unit-store.ts';
-import { InvalidQuantity } from '../physics/invalid-quantity.ts';
+import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
+import type { Compute } from './compute.ts';
 import type { Part } from './part.ts';
 import { digestOf } from './record.ts';
 import { partId, type Registered, type Registry } from './registry.ts';
@@ -14,6 +15,7 @@ import { partId, type Registered, type Registry } from './registry.ts';
 export interface UnitDesk {
   readonly registry: Registry;
   readonly units: UnitStore;
+  readonly compute: Pick<Compute, 'analysePulse'>;
 }
 
 /** A lot, and the drawing and conductor that its units are judged by. */
@@ -69,13 +71,14 @@ function yardstickOf(part: Part | undefined, name: string): Yardstick {
 export async function measure(
   desk: UnitDesk,
   { id, yardstick }: LotUnderTest,
-  units: readonly Unit[],
+  units: readonly SentUnit[],
 ): Promise<MeasuredAnswer[]> {
   const rigs = new Map<string, Registered<Rig> | undefined>();
   const entries: (UnitEntry | { readonly problem: CoilproofError })[] = [];
   for (const unit of units) {
     if (unit.rig !== undefined && !rigs.has(unit.rig)) rigs.set(unit.rig, await desk.registry.get('rig', unit.rig));
-    entries.push(judgedEntry(unit, unit.rig === undefined ? undefined : rigs.get(unit.rig)?.value, yardstick));
+    const rig = unit.rig === undefined ? undefined : rigs.get(unit.rig)?.value;
+    entries.push(await refusable(async () => judgedEntry(unit, await sweptUnit(desk, unit), rig, yardstick)));
   }
   const usable = entries.filter((entry): entry is UnitEntry => 'judged' in entry);
   const batch = { lot: id, entries: usable, rollUp: (added: readonly JudgedUnit[]) => rollUp(added, yardstick) };
@@ -89,22 +92,40 @@ export async function measure(
   });
 }
 
-function judgedEntry(
-  unit: Unit,
-  rig: Rig | undefined,
-  yardstick: Yardstick,
-): UnitEntry | { readonly problem: CoilproofError } {
+/** The unit with its pulse, where it has one, analysed beside the event loop. */
+export const sweptUnit = async ({ compute }: Pick<UnitDesk, 'compute'>, unit: SentUnit): Promise<Unit> =>
+  withSweep(unit, 'pulse' in unit ? await withinAsync('/pulse', compute.analysePulse(unit.pulse)) : undefined);
+
+/** The digest is of the unit as it was sent; what is stored of a pulse is the sweep that it was analysed to. */
+function judgedEntry(sent: SentUnit, unit: Unit, rig: Rig | undefined, yardstick: Yardstick): UnitEntry {
   if (unit.rig !== undefined && !rig) {
     const detail = `no rig ${unit.rig} is registered`;
-    return { problem: new CoilproofError('unknown-reference', detail, [{ pointer: '/rig', detail }]) };
+    throw new CoilproofError('unknown-reference', detail, [{ pointer: '/rig', detail }]);
   }
+  return { unit, digest: digestOf(sent), judged: judgeUnit(rig ? onRig(unit, rig) : unit, yardstick) };
+}
+
+/** What `work` makes, or the problem that one unit is refused for; faults of the service pass through. */
+async function refusable<T>(work: () => Promise<T>): Promise<T | { readonly problem: CoilproofError }> {
   try {
-    return { unit, digest: digestOf(unit), judged: judgeUnit(rig ? onRig(unit, rig) : unit, yardstick) };
+    return await work();
   } catch (error) {
+    if (error instanceof CoilproofError) return { problem: error };
     if (!(error instanceof InvalidQuantity)) throw error;
     const { pointer, detail } = error;
     return { problem: new CoilproofError('unusable-quantity', detail, [{ pointer, detail }]) };
   }
+}
+
+/** `within` of work that is awaited. */
+export async function withinAsync<T>(prefix: string, work: Promise<T>): Promise<T> {
+  const settled = await work.then(
+    (value) => () => value,
+    (error: unknown) => () => {
+      throw error;
+    },
+  );
+  return within(prefix, settled);
 }
 
 const contradicts = ({ serial, measuredAt }: Unit, lot: string) =>

@@ -2,10 +2,10 @@ import { CoilproofError } from '../errors.ts';
 import { summariseLot } from '../evidence/lot-summary.ts';
 import { onRig, type Unit } from '../evidence/unit.ts';
 import type { Material } from '../physics/core/material.ts';
-import { lotUnderTest, type UnitDesk } from './measuring.ts';
+import { lotUnderTest, sweptUnit, type UnitDesk, withinAsync } from './measuring.ts';
 import type { Part } from './part.ts';
 import { partId, type Registry } from './registry.ts';
-import type { ApprovalRequest, Evidence } from './request.ts';
+import type { ApprovalRequest, Evidence, SentRequest } from './request.ts';
 
 /** A place in a request where an id stood for something registered, and what tag it had when it was read. */
 export interface Reference {
@@ -63,11 +63,13 @@ function withMaterials(node: unknown, byId: ReadonlyMap<string, Material>): unkn
  * Throws `CoilproofError` `unknown-reference` naming the field of what is not registered.
  */
 export async function resolveRequest(
-  request: ApprovalRequest,
-  { registry, units }: UnitDesk,
+  request: SentRequest,
+  desk: UnitDesk,
 ): Promise<{ request: ApprovalRequest; references: readonly Reference[] }> {
+  const { registry } = desk;
   const part = await resolvePart(request.part, registry);
-  const evidence = await resolveRigs(await resolveLots(request.evidence, part.part, { registry, units }), registry);
+  const swept = await resolvePulses(request.evidence, desk);
+  const evidence = await resolveRigs(await resolveLots(swept, part.part, desk), registry);
   const { body, references } = await resolveMaterials(
     { ...request, part: part.part, ...(evidence.evidence && { evidence: evidence.evidence }) },
     registry,
@@ -85,6 +87,18 @@ async function resolvePart(part: Part, registry: Registry): Promise<{ part: Part
       `no part ${part.number} revision ${part.revision} is registered: register it, or send drawing and construction`,
     );
   return { part: stored.value, references: [{ pointer: '/part', kind: 'part', id, tag: stored.tag }] };
+}
+
+async function resolvePulses(evidence: SentRequest['evidence'], desk: UnitDesk): Promise<Evidence | undefined> {
+  if (!evidence) return undefined;
+  const { units, ...rest } = evidence;
+  if (!units) return rest;
+  return {
+    ...rest,
+    units: await Promise.all(
+      units.map((unit, index) => withinAsync(`/evidence/units/${index}`, sweptUnit(desk, unit))),
+    ),
+  };
 }
 
 async function resolveLots(

@@ -1,5 +1,5 @@
 import type { LotSummary } from '../evidence/lot-summary.ts';
-import type { Unit } from '../evidence/unit.ts';
+import type { SentUnit, Unit } from '../evidence/unit.ts';
 import type { Duty } from './duty.ts';
 import type { Part } from './part.ts';
 
@@ -20,3 +20,8 @@ export interface ApprovalRequest {
   /** standard uncertainty of numbers in this request, by RFC 6901 pointer */
   readonly uncertainty?: Readonly<Record<string, number>>;
 }
+
+/** A request as it comes: units may still hold raw pulses. */
+export type SentRequest = Omit<ApprovalRequest, 'evidence'> & {
+  readonly evidence?: { readonly lots?: readonly string[]; readonly units?: readonly SentUnit[] };
+};

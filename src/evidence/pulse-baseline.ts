@@ -147,7 +147,7 @@ export function quietPart(
 
 function largestOf(values: Float64Array): number {
   let largest = 0;
-  for (const value of values) largest = Math.max(largest, Math.abs(value));
+  for (let k = 0; k < values.length; k++) largest = Math.max(largest, Math.abs(values[k]!));
   return largest;
 }
 

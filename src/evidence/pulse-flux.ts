@@ -56,12 +56,12 @@ export function voltageOffset(
 
 function largestOf(values: Float64Array): number {
   let largest = 0;
-  for (const value of values) largest = Math.max(largest, Math.abs(value));
+  for (let k = 0; k < values.length; k++) largest = Math.max(largest, Math.abs(values[k]!));
   return largest;
 }
 
 /** Standard uncertainty of ∫v dt between two samples from not knowing when between its samples an edge came: rectangular, each on its own. */
-export function edgeUncertainty(time: Float64Array, voltage: Float64Array, from: number, to: number): number {
+function edgeUncertainty(time: Float64Array, voltage: Float64Array, from: number, to: number): number {
   const largest = largestOf(voltage);
   let squares = 0;
   for (let k = from + 1; k <= to; k++) {
@@ -149,12 +149,11 @@ export function risingBranch(
   let to = onset;
   for (let k = onset; k <= end; k++) if (linkage[k]! > linkage[to]!) to = k;
   const steepest = largestOf(voltage);
-  let from = onset;
-  while (from < to && isEdge(voltage, from + 1, steepest)) from++;
+  const from = settledFrom(voltage, onset, steepest);
   while (to > from && isEdge(voltage, to, steepest)) to--;
   if (!(current[to]! > peak / 2 && linkage[to]! > 0)) throw notRising(samples, voltage);
-  const first = current[from]!;
-  if (Math.abs(first) > Math.max(NEAR_ZERO * peak, SEEN * noise.deviation) && from === onset) {
+  const first = current[onset]!;
+  if (Math.abs(first) > Math.max(NEAR_ZERO * peak, SEEN * noise.deviation)) {
     throw new InvalidQuantity(
       `/current_A/${onset}`,
       `a pulse starts at zero current; this one starts at ${((100 * first) / peak).toPrecision(3)} % of its peak`,
@@ -167,6 +166,31 @@ export function risingBranch(
     );
   }
   return { from, to };
+}
+
+/** Intervals after the onset in which the voltage comes up, and a change in them that is counted as its coming. */
+const ONSET_INTERVALS = 3;
+const ONSET_CHANGE = 0.03;
+
+/** The first sample after the voltage has come up: those before do not share one λ's zero with the rest. */
+function settledFrom(voltage: Float64Array, onset: number, largest: number): number {
+  let from = onset;
+  for (let k = onset + 1; k <= onset + ONSET_INTERVALS; k++) {
+    if (Math.abs(voltage[k]! - voltage[k - 1]!) > ONSET_CHANGE * largest) from = k;
+  }
+  return from;
+}
+
+/**
+ * Standard uncertainty of λ at the first sample of a branch whose onset is known: each change of voltage since then came somewhere
+ * within its interval.
+ */
+export function onsetUncertainty(time: Float64Array, voltage: Float64Array, onset: number): number {
+  let squares = 0;
+  for (let k = onset + 1; k <= onset + ONSET_INTERVALS; k++) {
+    squares += ((voltage[k]! - voltage[k - 1]!) * (time[k]! - time[k - 1]!)) ** 2 / 12;
+  }
+  return Math.sqrt(squares);
 }
 
 function largestCurrent(current: Float64Array): number {

@@ -21,8 +21,8 @@ export interface ScaledReadings extends Readings {
   readonly samples: number;
 }
 
-/** Largest number of readings: 400 follow a curve of which 160 spline intervals are the finest. */
-const MOST_READINGS = 400;
+/** Largest number of readings: four for each of a spline's intervals at its finest. */
+const MOST_READINGS = 320;
 /** Readings span at least so many digitising steps of current, so that the stairs of a signal without noise average out. */
 const STEPS_ACROSS = 2;
 

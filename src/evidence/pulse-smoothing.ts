@@ -30,12 +30,8 @@ export interface SmoothCurve {
   readonly shift: number;
   /** of the coefficients and then the shift, row-major, (n + 1)² */
   readonly covariance: Float64Array;
-  /** estimated noise variance of a reading of weight one */
-  readonly variance: number;
   /** s of the readings, increasing */
   readonly places: Float64Array;
-  /** parameters that the readings decide rather than the prior */
-  readonly effectiveParameters: number;
 }
 
 /** From so stiff that f is a quadratic to so soft that readings a thousandth of 12 bit noisy decide every coefficient. */
@@ -47,8 +43,8 @@ const NEGLIGIBLE = 10;
 /** Residuals above this many times the noise variance known beforehand mean that the search has not come to the curve yet. */
 const MISFIT = 1.5;
 
+/** Spline intervals, doubled where these are too few. */
 const INTERVALS = 40;
-const MOST_INTERVALS = 160;
 
 /**
  * Smooths readings: f = ln(di/dλ) is taken as a random function whose third derivative is white noise, and everything else follows from the
@@ -65,20 +61,21 @@ const MOST_INTERVALS = 160;
  */
 export function smoothCurve(readings: Readings, noiseVariance: number, shiftDeviation: number): SmoothCurve | null {
   const task: Task = { readings, noiseVariance, shiftDeviation };
-  let intervals = INTERVALS;
-  let start: Float64Array = new Float64Array(intervals + 3);
-  let stiffest = STIFFEST;
-  for (;;) {
-    const candidates = search(task, start, stiffest);
-    if (candidates.length === 0) return null;
-    const result = average(candidates, readings);
-    // Where the readings decide half of what the spline can be, its knots limit it and no longer its prior.
-    const limited = 2 * result.effectiveParameters > intervals && 2 * intervals <= MOST_INTERVALS;
-    if (!limited || 4 * intervals > readings.linkage.length) return result;
-    intervals *= 2;
-    stiffest = Math.min(best(candidates).level + 2, STIFFEST);
-    start = onTwiceTheIntervals(result.curve.coefficients);
+  const even = (intervals: number) => new Float64Array(intervals).fill(1);
+  let plain = scan(task, even(INTERVALS), new Float64Array(INTERVALS + ORDER), STIFFEST);
+  if (plain.length === 0) return null;
+  const { curve, level } = best(plain);
+  // Where the readings decide half of what the spline can be, its knots limit it and no longer its prior.
+  if (2 * decided(best(plain)) > INTERVALS && readings.linkage.length > 2 * INTERVALS) {
+    const finer = scan(
+      task,
+      even(2 * INTERVALS),
+      onTwiceTheIntervals(curve.coefficients),
+      Math.min(level + 2, STIFFEST),
+    );
+    if (finer.length > 0) plain = finer;
   }
+  return averageOf(adapted(task, plain), readings);
 }
 
 /** A first curve through readings, soon made and good enough to group samples along. Null where none could be made. */
@@ -104,14 +101,16 @@ interface Task {
 /** Rounds of giving the roughness back to the prior, at most. */
 const ROUNDS = 2;
 
-function search(task: Task, start: Float64Array, stiffest: number): Candidate[] {
-  const even = new Float64Array(start.length - ORDER).fill(1);
-  let candidates = scan(task, even, start, stiffest);
-  for (let round = 0; round < ROUNDS && candidates.length > 0; round++) {
+/** The candidates and those whose prior is as rough over s as the candidates are, for as long as the likelihood rises. */
+function adapted(task: Task, plain: Candidate[]): Candidate[] {
+  let candidates = plain;
+  for (let round = 0; round < ROUNDS; round++) {
     const before = best(candidates);
-    const weights = priorWeights(average(candidates, task.readings).curve);
-    const adapted = scan(task, weights, before.curve.coefficients, Math.min(before.level + 2, STIFFEST));
-    candidates = [...candidates, ...adapted];
+    const weights = priorWeights(curveOf(meanOf(sharesOf(candidates)).slice(0, -1)));
+    candidates = [
+      ...candidates,
+      ...scan(task, weights, before.curve.coefficients, Math.min(before.level + 2, STIFFEST)),
+    ];
     if (best(candidates).deviance > before.deviance - 1) break;
   }
   return candidates;
@@ -189,25 +188,38 @@ function priorWeights({ intervals, coefficients }: Curve): Float64Array {
   return logs.map((value) => Math.exp(value - middle));
 }
 
-/** The candidates' average by likelihood, each smoothing as likely beforehand as the next on a logarithmic scale. */
-function average(candidates: readonly Candidate[], { linkage }: Readings): SmoothCurve {
+/** A candidate and its share of the average: by likelihood, each smoothing as likely beforehand as the next on a logarithmic scale. */
+interface Share {
+  readonly candidate: Candidate;
+  readonly share: number;
+}
+
+function sharesOf(candidates: readonly Candidate[]): Share[] {
   const { deviance: least } = best(candidates);
-  const counted = candidates.filter(({ deviance }) => deviance < least + NEGLIGIBLE);
-  const total = counted.reduce((sum, { deviance }) => sum + Math.exp((least - deviance) / 2), 0);
-  const size = counted[0]!.curve.coefficients.length + 1;
-  const mean = new Float64Array(size);
-  let variance = 0;
-  for (const candidate of counted) {
-    const share = Math.exp((least - candidate.deviance) / 2) / total;
-    variance += share * candidate.variance;
+  const counted = candidates
+    .filter(({ deviance }) => deviance < least + NEGLIGIBLE)
+    .map((candidate) => ({ candidate, share: Math.exp((least - candidate.deviance) / 2) }));
+  const total = counted.reduce((sum, { share }) => sum + share, 0);
+  return counted.map(({ candidate, share }) => ({ candidate, share: share / total }));
+}
+
+/** The average's coefficients and shift. */
+function meanOf(shares: readonly Share[]): Float64Array {
+  const mean = new Float64Array(shares[0]!.candidate.curve.coefficients.length + 1);
+  for (const { candidate, share } of shares) {
     parameters(candidate).forEach((value, a) => {
       mean[a]! += share * value;
     });
   }
+  return mean;
+}
+
+function averageOf(candidates: readonly Candidate[], { linkage }: Readings): SmoothCurve {
+  const shares = sharesOf(candidates);
+  const mean = meanOf(shares);
+  const size = mean.length;
   const covariance = new Float64Array(size * size);
-  let effectiveParameters = 0;
-  for (const candidate of counted) {
-    const share = Math.exp((least - candidate.deviance) / 2) / total;
+  for (const { candidate, share } of shares) {
     const own = inverse(candidate.factor, size);
     const away = parameters(candidate).map((value, a) => value - mean[a]!);
     for (let a = 0; a < size; a++) {
@@ -215,12 +227,10 @@ function average(candidates: readonly Candidate[], { linkage }: Readings): Smoot
         covariance[a * size + b]! += share * (candidate.variance * own[a * size + b]! + away[a]! * away[b]!);
       }
     }
-    effectiveParameters += share * decided(candidate, own);
   }
   const curve = curveOf(mean.slice(0, -1));
   const shift = mean[size - 1]!;
-  const places = linkage.map((lambda) => arcAt(curve, lambda + shift)).sort();
-  return { curve, shift, covariance, variance, places, effectiveParameters };
+  return { curve, shift, covariance, places: linkage.map((lambda) => arcAt(curve, lambda + shift)).sort() };
 }
 
 function parameters({ curve, shift }: Fit): Float64Array {
@@ -230,9 +240,10 @@ function parameters({ curve, shift }: Fit): Float64Array {
   return values;
 }
 
-/** The trace of the influence matrix: all parameters less those that the prior decides. */
-function decided({ curve, prior }: Candidate, inverseMatrix: Float64Array): number {
+/** Parameters that the readings decide: the trace of the influence matrix, all parameters less those that the prior decides. */
+function decided({ curve, prior, factor }: Candidate): number {
   const size = curve.coefficients.length + 1;
+  const inverseMatrix = inverse(factor, size);
   let byPrior = prior.shiftPrecision * inverseMatrix[size * size - 1]!;
   for (let r = 0; r < prior.weights.length; r++) {
     let quadratic = 0;
@@ -261,7 +272,10 @@ export interface CurvePoint {
 }
 
 /** The curve at each s. */
-export function pointsAlong({ curve, covariance, places: readAt }: SmoothCurve, places: readonly number[]): CurvePoint[] {
+export function pointsAlong(
+  { curve, covariance, places: readAt }: SmoothCurve,
+  places: readonly number[],
+): CurvePoint[] {
   const n = curve.coefficients.length;
   const table = sensitivityOf(curve);
   const row = new Float64Array(n);

@@ -6,7 +6,7 @@ import { findRoot } from '../physics/numerics/roots.ts';
 import { type ChannelNoise, noiseOf, quietPart } from './pulse-baseline.ts';
 import { arcAt, type Curve, linkageAt, logSlopeAt } from './pulse-curve.ts';
 import { auditEnergy, type EnergyAudit } from './pulse-energy.ts';
-import { edgeUncertainty, fluxLinkage, type OffsetSource, risingBranch, voltageOffset } from './pulse-flux.ts';
+import { fluxLinkage, type OffsetSource, onsetUncertainty, risingBranch, voltageOffset } from './pulse-flux.ts';
 import { evenReadings, readingsAlong, type Scale, type ScaledReadings, scaleOf } from './pulse-readings.ts';
 import { type Pulse, samplesOf } from './pulse-record.ts';
 import { pointsAlong, roughCurve, type SmoothCurve, smoothCurve } from './pulse-smoothing.ts';
@@ -72,12 +72,7 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
   };
   const scale = scaleOf(branch);
   // When the voltage came between two samples is not known, hence where on the curve λ is zero; without a quiet part even less.
-  const shiftDeviation = before
-    ? Math.hypot(
-        edgeUncertainty(time, voltage, onset, from),
-        Math.abs(voltage[from]!) * meanInterval(time) * STRAY_TIMING,
-      )
-    : UNKNOWN_START * scale.linkage;
+  const shiftDeviation = before ? onsetUncertainty(time, voltage, onset) : UNKNOWN_START * scale.linkage;
   const { smoothed, readings } = characteristicOf(branch, scale, noise.current, shiftDeviation);
   const end = Math.min(arcAt(smoothed.curve, branch.linkage.at(-1)! / scale.linkage + smoothed.shift), 1);
   const currentUncertainty = quiet
@@ -110,14 +105,8 @@ export function toSweep({ sweep }: PulseAnalysis): Sweep {
   return { kind: 'differential', current_A: sweep.current_A, inductance_H: sweep.differentialInductance_H };
 }
 
-/** Where the start of the pulse is known, but for part of an interval. */
-const STRAY_TIMING = 0.1;
-/** Where it is not: part of the largest λ. */
+/** Standard uncertainty of λ's zero where no quiet part shows the onset, in parts of the largest λ. */
 const UNKNOWN_START = 0.1;
-
-function meanInterval(time: Float64Array): number {
-  return (time.at(-1)! - time[0]!) / (time.length - 1);
-}
 
 /** A sample further than this many standard deviations beyond both its neighbours is a spike. */
 const SPIKE = 8;

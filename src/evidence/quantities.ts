@@ -86,7 +86,8 @@ function fromSweep(
   if (current_A > characteristic.maximumCurrent_A) {
     return { unavailable: `the sweep ends at ${characteristic.maximumCurrent_A} A, before ${current_A} A` };
   }
-  const { inductance, current } = unit.instrument ?? {};
+  const { inductance, current, voltage } = unit.instrument ?? {};
+  const inductanceGain_u = unit.fromPulse ? (voltage?.relative ?? inductance?.relative) : inductance?.relative;
   const readAs = ([
     inductanceGain = 1,
     inductanceOffset_H = 0,
@@ -99,7 +100,7 @@ function fromSweep(
       ),
     );
   const instrumental = propagate(readAs, [
-    { name: 'inductance gain', value: 1, standardUncertainty: inductance?.relative ?? 0 },
+    { name: 'inductance gain', value: 1, standardUncertainty: inductanceGain_u ?? 0 },
     { name: 'inductance offset', value: 0, standardUncertainty: inductance?.offset_H ?? 0 },
     { name: 'current gain', value: 1, standardUncertainty: current?.relative ?? 0 },
     { name: 'current offset', value: 0, standardUncertainty: current?.offset_A ?? 0 },

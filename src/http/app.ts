@@ -2,7 +2,6 @@ import { randomUUID } from 'node:crypto';
 import Fastify, { type FastifyInstance, type FastifyServerOptions } from 'fastify';
 import { serializerCompiler, validatorCompiler } from 'fastify-type-provider-zod';
 import type { ApprovalDesk } from '../approval/approval.ts';
-import type { Simulator } from '../approval/simulator.ts';
 import { assertFinite } from './finite.ts';
 import { metrics } from './plugins/metrics.ts';
 import { openapi } from './plugins/openapi.ts';
@@ -20,7 +19,6 @@ export interface AppOptions {
   readonly logger: NonNullable<FastifyServerOptions['loggerInstance']>;
   readonly limits: Limits;
   readonly desk: ApprovalDesk;
-  readonly simulator: Simulator;
 }
 
 export interface Limits {
@@ -66,7 +64,7 @@ export async function createApp(options: AppOptions): Promise<FastifyInstance> {
   await openapi(app, options.version);
   metrics(app);
   health(app, () => options.desk.store.ping());
-  calculations(app, { registry: options.desk.registry, simulator: options.simulator });
+  calculations(app, options.desk);
   approvals(app, options.desk);
   registry(app, options.desk.registry);
   lots(app, options.desk);

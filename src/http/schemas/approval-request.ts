@@ -1,13 +1,14 @@
 import { z } from 'zod';
 import type { Duty } from '../../approval/duty.ts';
 import type { Part } from '../../approval/part.ts';
-import type { ApprovalRequest } from '../../approval/request.ts';
+import type { SentRequest } from '../../approval/request.ts';
 import type { Instrument } from '../../evidence/instrument.ts';
-import type { Unit } from '../../evidence/unit.ts';
+import type { SentUnit } from '../../evidence/unit.ts';
 import { CoilSchema } from './coils.ts';
 import { CoolingSchema, SweepSchema, WindingSchema } from './inductor.ts';
 import { list } from './list.ts';
 import { PathSchema } from './path.ts';
+import { PulseSchema } from './pulse.ts';
 import * as q from './quantities.ts';
 import { identifier, text } from './text.ts';
 import { UncertaintyMap } from './uncertainty.ts';
@@ -118,20 +119,31 @@ const unitFields = {
   instrument: InstrumentSchema.exactOptional(),
   temperature_degC: q.temperature_degC.exactOptional(),
   resistance_ohm: q.resistance_ohm.exactOptional(),
-  sweep: SweepSchema,
 };
 
+const oneInstrument = (unit: { readonly rig?: string; readonly instrument?: Instrument }) =>
+  (unit.rig === undefined) !== (unit.instrument === undefined);
+const instrumentProblem = {
+  message: 'a unit has a registered rig or an inline instrument, one of the two',
+  path: ['rig'],
+};
+
+/** With a sweep, or with the raw pulse that one is analysed from. */
 export const UnitSchema = z
-  .strictObject(unitFields)
-  .refine(({ rig, instrument }) => (rig === undefined) !== (instrument === undefined), {
-    message: 'a unit has a registered rig or an inline instrument, one of the two',
-    path: ['rig'],
-  })
-  .meta({ description: 'one measured unit' }) satisfies z.ZodType<Unit>;
+  .union([
+    z.strictObject({ ...unitFields, sweep: SweepSchema }).refine(oneInstrument, instrumentProblem),
+    z.strictObject({ ...unitFields, pulse: PulseSchema }).refine(oneInstrument, instrumentProblem),
+  ])
+  .meta({ description: 'one measured unit' }) satisfies z.ZodType<SentUnit>;
 
 /** A unit as an approval records it: with what was registered of its rig. */
 export const RecordedUnitSchema = z
-  .object({ ...unitFields, calibrationDue: z.string().exactOptional() })
+  .object({
+    ...unitFields,
+    sweep: SweepSchema,
+    fromPulse: z.literal(true).exactOptional().meta({ description: 'the sweep was analysed from a pulse' }),
+    calibrationDue: z.string().exactOptional(),
+  })
   .meta({ id: 'RecordedUnit' });
 
 export const ApprovalRequestSchema = z.strictObject({
@@ -144,4 +156,4 @@ export const ApprovalRequestSchema = z.strictObject({
     })
     .exactOptional(),
   uncertainty: UncertaintyMap.exactOptional(),
-}) satisfies z.ZodType<ApprovalRequest>;
+}) satisfies z.ZodType<SentRequest>;

@@ -2,9 +2,9 @@ import type { FastifyInstance } from 'fastify';
 import type { ZodTypeProvider } from 'fastify-type-provider-zod';
 import { z } from 'zod';
 import { cautionsOf, type Hazards } from '../../../approval/cautions.ts';
+import type { Compute, Simulation } from '../../../approval/compute.ts';
 import { resolveMaterials } from '../../../approval/references.ts';
 import type { Registry } from '../../../approval/registry.ts';
-import type { Simulation, Simulator } from '../../../approval/simulator.ts';
 import { propagateOverRecord } from '../../../metrology/propagation.ts';
 import type { Calculation } from '../../../physics/calculations/calculation.ts';
 import { type CalculationName, exclusiveMinimum } from '../../../physics/calculations/index.ts';
@@ -16,7 +16,7 @@ import { type UncertaintyFields, UncertaintySchema } from '../../schemas/uncerta
 /** What calculations need from outside. */
 export interface CalculationPorts {
   readonly registry: Registry;
-  readonly simulator: Simulator;
+  readonly compute: Compute;
 }
 
 interface Description<Request extends UncertaintyFields, Answer extends object> {
@@ -36,7 +36,7 @@ interface Description<Request extends UncertaintyFields, Answer extends object> 
 /** Registers one calculation: nothing stored, uncertainty of any number in the request propagated, cautions added. */
 export function calculation<Request extends UncertaintyFields, Answer extends object>(
   app: FastifyInstance,
-  { registry, simulator }: CalculationPorts,
+  { registry, compute }: CalculationPorts,
   c: Description<Request, Answer>,
 ): void {
   const added = { uncertainty: UncertaintySchema.exactOptional(), cautions: list(CautionSchema) };
@@ -67,7 +67,7 @@ export function calculation<Request extends UncertaintyFields, Answer extends ob
         ...(uncertainty && {
           uncertainty:
             method === 'monte-carlo'
-              ? await simulated(simulator, { calculation: c.name, request: input, uncertainty, options })
+              ? await simulated(compute, { calculation: c.name, request: input, uncertainty, options })
               : firstOrder(c.calculation, input, uncertainty),
         }),
         cautions: cautionsOf(c.hazards?.(input, answer) ?? {}),
@@ -79,8 +79,8 @@ export function calculation<Request extends UncertaintyFields, Answer extends ob
 /** Enough for two significant digits of a standard uncertainty and of a 95 % interval (JCGM 101, 7.2.3). */
 const DEFAULT_TRIALS = 100_000;
 
-async function simulated(simulator: Simulator, simulation: Simulation) {
-  return { method: 'monte-carlo' as const, ...(await simulator.simulate(simulation)) };
+async function simulated(compute: Compute, simulation: Simulation) {
+  return { method: 'monte-carlo' as const, ...(await compute.simulate(simulation)) };
 }
 
 function firstOrder<Request, Answer>(

@@ -7,6 +7,7 @@ import { fieldRoute } from './field.ts';
 import { inductanceRoute } from './inductance.ts';
 import { lossesRoute } from './losses.ts';
 import { mutualInductanceRoute } from './mutual-inductance.ts';
+import { pulseAnalysisRoute } from './pulse-analysis.ts';
 import { saturationRoute } from './saturation.ts';
 import { transientRoute } from './transient.ts';
 
@@ -21,4 +22,5 @@ export function calculations(app: FastifyInstance, ports: CalculationPorts): voi
   transientRoute(app, ports);
   lossesRoute(app, ports);
   conformityRoute(app);
+  pulseAnalysisRoute(app, ports);
 }

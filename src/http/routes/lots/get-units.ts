@@ -4,14 +4,14 @@ import { z } from 'zod';
 import { lotUnderTest, type UnitDesk } from '../../../approval/measuring.ts';
 import { packCursor, unpackPosition } from '../../cursor.ts';
 import { operation } from '../../operation.ts';
-import { UnitSchema } from '../../schemas/approval-request.ts';
+import { RecordedUnitSchema } from '../../schemas/approval-request.ts';
 import { JudgedUnitSchema, OutcomeSchema } from '../../schemas/judged-unit.ts';
 import { list } from '../../schemas/list.ts';
 import { LotParams } from './parameters.ts';
 
 const Page = z
   .object({
-    units: list(z.object({ unit: UnitSchema, judged: JudgedUnitSchema })).meta({
+    units: list(z.object({ unit: RecordedUnitSchema, judged: JudgedUnitSchema })).meta({
       description: 'in the order of recording',
     }),
     after: z.string().nullable().meta({ description: 'send as after for the next page; null on the last' }),

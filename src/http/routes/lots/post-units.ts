@@ -10,7 +10,7 @@ import {
   type UnitDesk,
 } from '../../../approval/measuring.ts';
 import { CoilproofError } from '../../../errors.ts';
-import type { Unit } from '../../../evidence/unit.ts';
+import type { SentUnit } from '../../../evidence/unit.ts';
 import { ndjsonAnswers, started } from '../../bulk/answers.ts';
 import { type BulkLine, inPlace, isProblem } from '../../bulk/bulk-line.ts';
 import { csvUnits } from '../../bulk/csv.ts';
@@ -21,6 +21,7 @@ import { problemBody } from '../../problems.ts';
 import { fieldErrors, type SchemaIssue, summarise } from '../../schema-issues.ts';
 import { UnitSchema } from '../../schemas/approval-request.ts';
 import { JudgedUnitSchema } from '../../schemas/judged-unit.ts';
+import { PULSE_BODY_BYTES } from '../../schemas/pulse.ts';
 import { A_DAY_MS } from '../../streams.ts';
 import { EXAMPLE_UNIT, LotParams } from './parameters.ts';
 
@@ -41,6 +42,7 @@ export function postUnits(app: FastifyInstance, desk: UnitDesk): void {
       // The handler may take as long as the rig sends.
       validatorCompiler: validateUnlessStream as never,
       handlerTimeout: A_DAY_MS,
+      bodyLimit: PULSE_BODY_BYTES,
       schema: {
         ...operation({
           operationId: 'postUnits',
@@ -62,7 +64,7 @@ export function postUnits(app: FastifyInstance, desk: UnitDesk): void {
       const mediaType = request.headers['content-type']?.split(';', 1)[0]?.trim().toLowerCase();
       if (mediaType === NDJSON || mediaType === CSV) {
         const source = request.body as unknown as Readable;
-        const lines = mediaType === NDJSON ? ndjsonLines(source) : csvUnits(source);
+        const lines = mediaType === NDJSON ? ndjsonLines(source, { lineBytes: PULSE_BODY_BYTES }) : csvUnits(source);
         const answers = await started(inOrder(lines, (batch) => answerBatch(desk, lot, batch, request.id), BATCH));
         return reply.type(NDJSON).send(ndjsonAnswers(answers) as never);
       }
@@ -109,7 +111,7 @@ function parseUnit({
   value,
 }: {
   readonly value: unknown;
-}): { readonly unit: Unit } | { readonly problem: CoilproofError } {
+}): { readonly unit: SentUnit } | { readonly problem: CoilproofError } {
   const parsed = UnitSchema.safeParse(value);
   if (parsed.success) return { unit: parsed.data };
   const fields = fieldErrors(parsed.error.issues as unknown as SchemaIssue[], value);

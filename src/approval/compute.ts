@@ -1,3 +1,4 @@
+import type { Pulse, PulseAnalysis } from '../evidence/pulse.ts';
 import type { MonteCarloOptions, MonteCarloResult } from '../metrology/monte-carlo.ts';
 import type { CalculationName } from '../physics/calculations/index.ts';
 
@@ -9,8 +10,9 @@ export interface Simulation {
   readonly options: MonteCarloOptions;
 }
 
-/** The port to what runs simulations beside the event loop. */
-export interface Simulator {
+/** The port to what computes beside the event loop, so that it stays free. Errors are those of the calculation itself. */
+export interface Compute {
   simulate(simulation: Simulation): Promise<MonteCarloResult>;
+  analysePulse(pulse: Pulse): Promise<PulseAnalysis>;
   close(): Promise<void>;
 }

@@ -1,18 +1,27 @@
+import { analysePulse, type Pulse, type PulseAnalysis } from '../evidence/pulse.ts';
 import { type Evaluate, recordModel } from '../metrology/monte-carlo.ts';
 import { runBlock } from '../metrology/trials.ts';
 import type { Calculation } from '../physics/calculations/calculation.ts';
 import { calculationOf, exclusiveMinimum } from '../physics/calculations/index.ts';
 import { InvalidQuantity, within } from '../physics/invalid-quantity.ts';
-import type { SimulationShare, SimulationTask } from './simulation.ts';
+import type { Answered, SimulationShare, SimulationTask } from './compute.ts';
 
-/** What a compute thread does: some blocks of trials of a calculation. A refused quantity crosses to the caller as data. */
-export default function run({ calculation, request, uncertainty, blocks }: SimulationTask): SimulationShare {
-  try {
+/** Some blocks of trials of a calculation. */
+export const simulate = ({ calculation, request, uncertainty, blocks }: SimulationTask): Answered<SimulationShare> =>
+  answered(() => {
     const { model, inputs, outputNames } = modelOf(calculationOf(calculation), request, uncertainty);
     const samples = within('/uncertainty', () =>
       blocks.map((block) => runBlock(model, inputs, outputNames.length, block)),
     );
     return { outputNames, samples };
+  });
+
+/** The analysis of one pulse. */
+export const pulse = (samples: Pulse): Answered<PulseAnalysis> => answered(() => analysePulse(samples));
+
+function answered<T>(work: () => T): Answered<T> {
+  try {
+    return { result: work() };
   } catch (error) {
     if (error instanceof InvalidQuantity) return { refused: { pointer: error.pointer, detail: error.detail } };
     throw error;

@@ -20,7 +20,11 @@ const units = ['2026-03-01', '2026-03-02'].flatMap((day) =>
         serial: `${day} ${bench} ${k}`,
         measuredAt: `${day}T08:0${k}:00Z`,
         rig: bench,
-        sweep: { kind: 'differential', current_A: CURRENTS, inductance_H: CURRENTS.map((i) => l0 * (1 - i / (20 + k / 5))) },
+        sweep: {
+          kind: 'differential',
+          current_A: CURRENTS,
+          inductance_H: CURRENTS.map((i) => l0 * (1 - i / (20 + k / 5))),
+        },
       };
     }),
   ),

@@ -28,6 +28,8 @@ export type CheckName = (typeof CHECK_NAMES)[number];
 export interface Check {
   readonly name: CheckName;
   observe(request: ApprovalRequest): readonly Observation[];
+  /** What its observations are of, where they are several; default: measured units. */
+  readonly counted?: string;
   /** Pointers to the inputs that could relieve it; those that the request does not give are passed over. */
   readonly levers: readonly string[];
 }

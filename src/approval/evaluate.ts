@@ -46,7 +46,7 @@ function checkResult(check: Check, request: ApprovalRequest): CheckResult[] {
   };
   if (serial === undefined) return [result];
   const passing = judgements.filter(({ outcome }) => outcome === 'pass').length;
-  const count = `${passing} of ${judgements.length} measured ${judgements.length === 1 ? 'units passes' : 'units pass'}`;
+  const count = `${passing} of ${judgements.length} ${check.counted ?? 'measured units'} ${passing === 1 ? 'passes' : 'pass'}`;
   return [{ ...result, detail: `${count}; the most adverse: ${worst.detail}`, units: judgements }];
 }
 

@@ -28,6 +28,7 @@ const CALIBRATION: Method = {
 /** Is each cited lot capable of each of the drawing's limits? Cpk with the uncertainty that its confidence interval shows. */
 export const lotCapability: Check = {
   name: 'lot-capability',
+  counted: 'quantities of the lots',
   levers: ['/duty/evidence/minimumCpk'],
   observe: ({ evidence, duty }) => {
     const lower = duty.evidence?.minimumCpk ?? LEAST_CPK;
@@ -60,6 +61,7 @@ function observeLot({ lot, quantities }: LotSummary, lower: number): Observation
 /** Were the rigs of all cited measurements in calibration? What a rig out of calibration measured leaves the matter open. */
 export const calibration: Check = {
   name: 'calibration',
+  counted: 'sets of measurements',
   levers: [],
   observe({ evidence }) {
     const lots = (evidence?.lotSummaries ?? []).map(({ lot, counts }) =>

@@ -7,7 +7,7 @@
  * which all values together occupy no more than 256 bins; parts occupy no more than the whole, so none is ever coarser than that.
  * - Up to 256 units keep each its own bin, 2⁻³² of the tolerance wide: as good as the values themselves.
  * - A million units of a normal lot reach bins of about 0.04 to 0.08 standard deviations, whatever the drawing's limits are beside the
- *   spread. (200 fixed bins over the tolerance would put a lot with Cp = 20 into five of them.)
+ *   spread. (200 fixed bins over the tolerance would put a lot with Cp = 20 into ten of them.)
  * - Stray values cost a bin each and not the resolution of the others, unlike bins between the extremes.
  * - The limits are edges at every width up to the tolerance itself, so a histogram never blurs them.
  * Values further than 2²⁰ scales from the origin, such as an instrument's overflow code of 9.9e37, are counted as below or above.

@@ -6,16 +6,17 @@
  *
  * | quantity | range tried | worst relative error | against |
  * |---|---|---|---|
- * | Cp interval | n from 2 to 1e6 | SEE | mpmath |
- * | Cpk interval, one limit | n from 2 to 1e6, Cpk from −1 to 5 | SEE | mpmath |
- * | Cpk interval, two limits: coverage | n 2 to 200, centred to far off | SEE | Monte Carlo |
+ * | Cp interval, of Cp | n from 2 to 1e6 | 6e-16 | mpmath, 40 digits |
+ * | Cpk interval, one limit | n from 2 to 200, Cpk from −0.5 to 4 | 3e-14 | scipy, the other order of integration |
+ * | Cpk interval, two limits, least favourable mean | the same | 4e-14 | the same |
+ * | Cpk interval, two limits, mean up to 4 σ off | the same | no end inside the one that covers exactly | the same |
  */
 import { InvalidQuantity } from '../../physics/invalid-quantity.ts';
 import { findRoot } from '../../physics/numerics/roots.ts';
 import type { Limits } from '../conformity.ts';
 import type { Interval } from '../coverage-interval.ts';
 import { upperTailQuantile } from '../normal.ts';
-import { noncentralityLimit, normalOverChi } from './noncentral-t.ts';
+import { FAR, noncentralityLimit, normalOverChi } from './noncentral-t.ts';
 import { type NonconformingFraction, nonconformingFraction } from './nonconforming.ts';
 import { type NormalSample, requireLevel, requireSample, requireSize } from './normal-sample.ts';
 import { lowerQuantile, upperQuantile, upperTail } from './scaled-chi.ts';
@@ -41,7 +42,7 @@ export interface Capability {
 /**
  * Capability of the population that `sample` is from. Cp's interval is exact (chi-squared); Cpk's is exact with one limit (noncentral
  * t), and with two it covers at least as often as it says, wherever the population lies between them.
- * Throws `InvalidQuantity`: '/n', '/mean', '/standardDeviation' (see `requireSample`), '/lower' (no limit, not finite, not below upper),
+ * Throws `InvalidQuantity`: '/n', '/mean', '/standardDeviation' (see `requireSample`; or so small that an index overflows), '/lower' (no limit, not finite, not below upper),
  * '/upper', '/confidence' (not between 0 and 1).
  */
 export function capability(sample: NormalSample, limits: Limits, confidence = 0.95): Capability {
@@ -58,7 +59,7 @@ export function capability(sample: NormalSample, limits: Limits, confidence = 0.
 
 /**
  * The approximate interval for Cpk that other programs print, Ĉpk ± z√(1/(9n) + Ĉpk²/(2(n − 1))): A. F. Bissell, Applied Statistics 39
- * (1990) 331-340. For comparison with them: it covers too seldom below n ≈ 50.
+ * (1990) 331-340. For comparison with them only.
  * Throws `InvalidQuantity` '/n', '/confidence'.
  */
 export function bissellInterval(cpk: number, n: number, confidence = 0.95): Interval {
@@ -103,6 +104,9 @@ function cpkOf({ n, mean, standardDeviation: s }: NormalSample, limits: Limits, 
     upper === undefined ? Number.POSITIVE_INFINITY : (upper - mean) / (3 * s),
   );
   const tail = (1 - confidence) / 2;
+  if (!Number.isFinite(value)) {
+    throw new InvalidQuantity('/standardDeviation', 'is too small beside the distance to the limits');
+  }
   const least = -indexLimit(-value, n, tail);
   if (lower === undefined || upper === undefined) {
     return {
@@ -128,7 +132,7 @@ function indexLimit(estimate: number, n: number, tail: number): number {
  * The same from two limits. With the mean a·σ off their middle and the index k held, the estimate is, in units of 3s/σ, 3k plus the
  * lesser of −Z/√n and 2a + Z/√n, which can only grow with a. So it falls to `estimate` or below most often at the least a: 0, or −3k
  * where k < 0, as the limits then can't be nearer to each other than touching. (At a = ∞ one limit is left, which gives the lower
- * end: S. Kushler, P. Hurley, Journal of Quality Technology 24 (1992) 188-195.)
+ * end: S. Kushler, P. Hurley, Journal of Quality Technology 24 (1992) 188-195, *from memory*.)
  */
 function centredIndexLimit(estimate: number, n: number, tail: number): number {
   const scale = 3 * Math.sqrt(n);
@@ -142,6 +146,8 @@ function centredIndexLimit(estimate: number, n: number, tail: number): number {
   };
   // Two ways to be small have at most twice the probability of one.
   const low = indexLimit(estimate, n, tail);
+  // So far inside or outside, where the sample's mean has fallen no longer matters, nor does the other limit.
+  if (Math.abs(scale * estimate) > FAR) return low;
   const high = indexLimit(estimate, n, tail / 2);
   return excess(low) >= 0 ? low : excess(high) <= 0 ? high : findRoot(excess, low, high, 1e-13);
 }

@@ -4,8 +4,8 @@
  *
  * | function | domain | worst relative error | against |
  * |---|---|---|---|
- * | oneSidedFactor | n from 2 to 1e6, content 0.5 to 0.9999, confidence 0.5 to 0.999999 | SEE | mpmath, 30 digits |
- * | twoSidedFactor | the same | SEE | mpmath, 30 digits |
+ * | oneSidedFactor | n from 2 to 1e6, content 0.5 to 0.9999, confidence 0.5 to 0.999999 | 1e-15 | mpmath, 32 digits |
+ * | twoSidedFactor | the same | 7e-14 at n = 2, else 4e-15 | mpmath, 32 digits, the other order of integration |
  */
 import { integrate } from '../../physics/numerics/quadrature.ts';
 import { findRoot } from '../../physics/numerics/roots.ts';

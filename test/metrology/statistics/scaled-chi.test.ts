@@ -40,5 +40,9 @@ describe('the distribution of s/σ', () => {
 
   it('ends where the distribution does', () => {
     expect([lowerTail(5, 0), lowerTail(5, -1), upperTail(5, 0), upperTail(5, -1)]).toEqual([0, 0, 1, 1]);
+    for (const nu of [1, 2, 999_999]) {
+      for (const x of [50, 1e10, 1e200, Number.MAX_VALUE]) expect([lowerTail(nu, x), upperTail(nu, x)]).toEqual([1, 0]);
+      expect(upperTail(nu, 1e-300)).toBe(1);
+    }
   });
 });

@@ -25,8 +25,8 @@ function howe(n: number, content: number, confidence: number): number {
 
 describe('factors', () => {
   it.each(reference.rows as number[][])('n = %i, content %f, confidence %f', (n, content, confidence, k1, k2) => {
-    expect(Math.abs(oneSidedFactor(n!, content!, confidence!) - k1!)).toBeLessThan(1e-12 * Math.max(k1!, 1));
-    expect(Math.abs(twoSidedFactor(n!, content!, confidence!) / k2! - 1)).toBeLessThan(1e-12);
+    expect(Math.abs(oneSidedFactor(n!, content!, confidence!) - k1!)).toBeLessThan(1e-14 * Math.max(k1!, 1));
+    expect(Math.abs(twoSidedFactor(n!, content!, confidence!) / k2! - 1)).toBeLessThan(1e-13);
   });
 
   it('NIST/SEMATECH e-Handbook 7.2.6.3, N = 43, content 0.90, confidence 0.99: its approximations 2.217 and 1.8752, and the exact', () => {
@@ -61,7 +61,7 @@ describe('factors', () => {
           expect(twoSidedFactor(n + 1, content, confidence)).toBeLessThan(twoSidedFactor(n, content, confidence));
         },
       ),
-      { seed: 9, numRuns: 8 },
+      { seed: 9, numRuns: 5 },
     );
   });
 

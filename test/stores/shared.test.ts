@@ -33,13 +33,11 @@ describe.each(STORES.filter(({ engine }) => engine === 'PostgreSQL'))('two servi
     expect(first!.body.quantities[0].n).toBe(30);
     const approvals = await Promise.all(
       Array.from({ length: 10 }, (_, k) =>
-        (k % 2 ? one! : other!)
-          .post('/v1/approvals')
-          .send({
-            part: { number: 'LG-1', revision: 'A' },
-            duty: { peakCurrent_A: 1 },
-            evidence: { units: [unit(`A-${k}`)] },
-          }),
+        (k % 2 ? one! : other!).post('/v1/approvals').send({
+          part: { number: 'LG-1', revision: 'A' },
+          duty: { peakCurrent_A: 1 },
+          evidence: { units: [unit(`A-${k}`)] },
+        }),
       ),
     );
     expect(approvals.map(({ status }) => status)).toEqual(Array(10).fill(201));

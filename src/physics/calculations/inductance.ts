@@ -1,5 +1,6 @@
 import { type FluxCharacteristic, methodAt } from '../characteristic.ts';
 import { type Coil, coilCharacteristic } from '../coil.ts';
+import { spiralCurrentSheet_H } from '../coils/flat-spiral.ts';
 import { within } from '../invalid-quantity.ts';
 import { type Winding, windingResistance } from '../losses/winding-resistance.ts';
 import type { Method } from '../method.ts';
@@ -16,6 +17,8 @@ export interface InductanceRequest {
 export interface InductanceAnswer {
   /** at zero current */
   readonly inductance_H: number;
+  /** of a flat spiral: a published closed form beside the sum; their difference is in the method's relative error */
+  readonly closedForm_H?: number;
   /** at `current_A` */
   readonly energy_J?: number;
   readonly fluxLinkage_Wb?: number;
@@ -39,6 +42,7 @@ export const inductance: Calculation<InductanceRequest, InductanceAnswer> = {
     const inductance_H = characteristic.differentialInductance_H(0);
     return {
       inductance_H,
+      ...(coil.shape === 'flat-spiral' && { closedForm_H: spiralCurrentSheet_H(coil) }),
       ...(current_A !== undefined && atCurrent(characteristic, current_A)),
       ...(winding && resistive(winding, inductance_H, temperature_degC)),
       method: methodAt(characteristic, current_A ?? 0),

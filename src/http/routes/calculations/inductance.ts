@@ -27,6 +27,10 @@ export const inductanceRoute = (app: FastifyInstance, ports: CalculationPorts) =
     answer: z
       .object({
         inductance_H: z.number().meta({ description: 'H, at zero current' }),
+        closedForm_H: z
+          .number()
+          .exactOptional()
+          .meta({ description: 'H, of a flat spiral: a published closed form beside the sum over turns' }),
         energy_J: z.number().exactOptional(),
         fluxLinkage_Wb: z.number().exactOptional(),
         apparentInductance_H: z.number().exactOptional().meta({ description: 'H, flux linkage over current' }),

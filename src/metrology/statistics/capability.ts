@@ -142,7 +142,9 @@ function centredIndexLimit(estimate: number, n: number, tail: number): number {
     const certain = estimate > 0 ? Math.max(0, k + apart / 2) / estimate : Number.POSITIVE_INFINITY;
     const within = (index: number) => normalOverChi(n - 1, scale * estimate, scale * index, 0, certain);
     const beyond = certain === Number.POSITIVE_INFINITY ? 0 : upperTail(n - 1, certain);
-    return Math.log(tail / (beyond + within(k) + within(k + apart)));
+    const onOneSide = within(k);
+    const onTheOther = apart === 0 ? onOneSide : within(k + apart);
+    return Math.log(tail / (beyond + onOneSide + onTheOther));
   };
   // Two ways to be small have at most twice the probability of one.
   const low = indexLimit(estimate, n, tail);

@@ -63,12 +63,12 @@ function withMaterials(node: unknown, byId: ReadonlyMap<string, Material>): unkn
  * Throws `CoilproofError` `unknown-reference` naming the field of what is not registered.
  */
 export async function resolveRequest(
-  request: SentRequest,
+  { evidence: sent, ...request }: SentRequest,
   desk: UnitDesk,
 ): Promise<{ request: ApprovalRequest; references: readonly Reference[] }> {
   const { registry } = desk;
   const part = await resolvePart(request.part, registry);
-  const swept = await resolvePulses(request.evidence, desk);
+  const swept = await resolvePulses(sent, desk);
   const evidence = await resolveRigs(await resolveLots(swept, part.part, desk), registry);
   const { body, references } = await resolveMaterials(
     { ...request, part: part.part, ...(evidence.evidence && { evidence: evidence.evidence }) },

@@ -66,7 +66,8 @@ function integrateAway(
   const away = distance(start, bend);
   // One plain panel where nothing is singular nearby: a thin wall's digits would be lost to the difference of two asinh.
   if (length <= 2 * away) {
-    const { nodes, weights } = gaussLegendre(panelOrder(length, away));
+    // One point more than the singularity asks for: far away the field grows as a² on the ellipse that bounds the error.
+    const { nodes, weights } = gaussLegendre(panelOrder(length, away) + 1);
     for (let i = 0; i < nodes.length; i++) {
       const s = (length / 2) * (1 + nodes[i]!);
       add(edge + side * s, side * (start + s), (length / 2) * weights[i]!);

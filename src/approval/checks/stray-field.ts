@@ -2,7 +2,7 @@ import { inWords } from '../../evidence/wording.ts';
 import { fieldMethod, isFieldCoil, worstFieldAtDistance } from '../../physics/fields/field.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import type { Check } from '../check.ts';
-import { observed } from '../construction.ts';
+import { COIL_POINTER, observed } from '../construction.ts';
 
 /** Does the field stay below the limit at the duty's distance, in the worst direction, at peak current? */
 export const strayField: Check = {
@@ -36,9 +36,10 @@ export const strayField: Check = {
         },
       ];
     }
+    const method = within(COIL_POINTER, () => fieldMethod(coil));
     const { magnitude_T } = within('/duty/strayField', () =>
       worstFieldAtDistance(coil, peakCurrent_A, place.distance_m),
     );
-    return [{ ...common, ...observed(magnitude_T, fieldMethod(coil)) }];
+    return [{ ...common, ...observed(magnitude_T, method) }];
   },
 };

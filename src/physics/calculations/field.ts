@@ -21,10 +21,12 @@ export interface FieldAnswer {
 /** Flux density of a coil at points, and where it falls to a limit. */
 export const field: Calculation<FieldRequest, FieldAnswer> = {
   calculate({ coil, current_A, points, limit_T }) {
+    // First, so that dimensions which contradict each other are told of the coil and not of a point.
+    const method = within('/coil', () => fieldMethod(coil));
     return {
       points: points.map((point, index) => within(`/points/${index}`, () => fieldAt(coil, current_A, point))),
       ...(limit_T !== undefined && { limitDistance: limitDistances(coil, current_A, limit_T) }),
-      method: fieldMethod(coil),
+      method,
     };
   },
   mainOutputs: ({ points }) =>

@@ -34,7 +34,7 @@ function spiral(
 
 describe('flat spiral, sum over concentric turns', () => {
   it('agrees with direct product integration over the sections of every pair of turns', () => {
-    expect(reference.sums.length).toBeGreaterThan(50);
+    expect(reference.sums.length).toBe(40);
     for (const [outline, turns, width, spacing, thickness, expected] of reference.sums as [
       Outline,
       number,
@@ -45,16 +45,26 @@ describe('flat spiral, sum over concentric turns', () => {
     ][]) {
       const { inductance_H } = flatSpiralInductance(spiral(outline, turns, width, spacing, thickness));
       const error = Math.abs((inductance_H * 4 * Math.PI) / VACUUM_PERMEABILITY_H_PER_M / expected - 1);
-      expect(error).toBeLessThan(outline === 'circle' ? 2e-9 : 1e-7);
+      expect(error).toBeLessThan(outline === 'circle' ? 2e-9 : 1e-8);
     }
   });
 
   it('differs from spirals that draw in evenly by no more than it says', () => {
-    expect(reference.archimedean.length).toBeGreaterThan(7);
+    expect(reference.archimedean.length).toBe(11);
     for (const [turns, width, spacing, expected] of reference.archimedean as [number, number, number, number][]) {
       const { inductance_H, method } = flatSpiralInductance(spiral('circle', turns, width, spacing));
       const even_H = (VACUUM_PERMEABILITY_H_PER_M / (4 * Math.PI)) * expected;
       expect(Math.abs(even_H / inductance_H - 1)).toBeLessThan(method.relativeError);
+    }
+  });
+
+  it('differs from a turn whose current keeps to the inside of the bend by no more than it says', () => {
+    expect(reference.bend.length).toBe(7);
+    for (const [width, expected] of reference.bend as [number, number][]) {
+      const { inductance_H, method } = flatSpiralInductance(spiral('circle', 1, width, 1));
+      const bent_H = (VACUUM_PERMEABILITY_H_PER_M / (4 * Math.PI)) * expected;
+      expect(bent_H).toBeLessThan(inductance_H);
+      expect(1 - bent_H / inductance_H).toBeLessThan(method.relativeError);
     }
   });
 
@@ -77,7 +87,7 @@ describe('flat spiral, sum over concentric turns', () => {
     for (const outline of OUTLINES) {
       const at = (turns: number) => flatSpiralInductance(spiral(outline, turns, 0.05, 0.03, 0.01)).inductance_H;
       let last = 0;
-      for (let turns = 1; turns <= 6; turns += 0.125) {
+      for (let turns = 1; turns <= 5; turns += 0.25) {
         expect(at(turns)).toBeGreaterThan(last);
         last = at(turns);
       }
@@ -114,11 +124,11 @@ describe('flat spiral, sum over concentric turns', () => {
     );
   });
 
-  it('takes a thousand turns and a hundred thousand: n² times the inductance of the same winding', () => {
+  it('takes a thousand turns and ten thousand: n² times the inductance of the same winding', () => {
     for (const outline of OUTLINES) {
       const perTurn2 = (turns: number) =>
         flatSpiralInductance(spiral(outline, turns, 0.3 / turns, 0.3 / turns)).inductance_H / turns ** 2;
-      expect(perTurn2(1000) / perTurn2(100_000)).toBeCloseTo(1, 2);
+      expect(perTurn2(1000) / perTurn2(10_000)).toBeCloseTo(1, 2);
     }
   });
 });
@@ -168,7 +178,9 @@ describe('flat spiral, what cannot be', () => {
     refused(spiral('circle', 5, 0.1, 0.125));
     refused(spiral('square', 4.5, 0.15, 0.07));
     refused(spiral('circle', 0.5, 0.1, 0.1));
-    refused(spiral('circle', 1e6, 1e-8, 1e-8));
+    refused(spiral('circle', 10_001, 1e-8, 1e-8));
+    expect(() => flatSpiralInductance(spiral('circle', 1, 0.1, 0.1, 2.01))).toThrow('/trackThickness_m');
+    expect(() => flatSpiralInductance(spiral('circle', 1, 1e-101, 0.1))).toThrow('/trackWidth_m');
     expect(flatSpiralInductance(spiral('circle', 5, 0.1, 0.1249)).inductance_H).toBeGreaterThan(0);
   });
 });

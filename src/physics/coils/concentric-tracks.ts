@@ -69,7 +69,7 @@ function farPair(kernel: FilamentKernel, mean: number, separation: number, secti
 
 /**
  * K averaged over both sections of tracks that coincide (separation 0) or are close: over the difference u of the two radii
- * and, for each, the mean radius. From its lower end u runs as x⁴, which draws the sting of the logarithm at u = 0.
+ * and, for each, the mean radius. From its lower end u runs as x⁶, which draws the sting of the logarithm at u = 0.
  */
 function nearPair(kernel: FilamentKernel, mean: number, separation: number, section: TrackSection): number {
   const { width, thickness } = section;

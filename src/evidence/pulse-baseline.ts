@@ -61,25 +61,20 @@ const OFF_GRID = 0.1;
 /** So many of them are needed to tell a grid from chance, which is on it with probability 2·OFF_GRID each. */
 const NEIGHBOURS = 8;
 
-/** The step of which the smallest differences of neighbouring samples are multiples; 0 where they are not. */
+/** The step of which the smallest differences between the values that occur are multiples; 0 where they are not. */
 function digitisingStep(values: Float64Array): number {
   const same = ROUNDING * largestOf(values);
-  let least = Number.POSITIVE_INFINITY;
-  for (let k = 1; k < values.length; k++) {
-    const difference = Math.abs(values[k]! - values[k - 1]!);
-    if (difference > same && difference < least) least = difference;
+  const stride = Math.max(1, Math.floor(values.length / LOOKED_AT));
+  const sorted = values.filter((_, k) => k % stride === 0).sort();
+  const differences: number[] = [];
+  for (let k = 1; k < sorted.length; k++) {
+    const difference = sorted[k]! - sorted[k - 1]!;
+    if (difference > same) differences.push(difference);
   }
-  const few: number[] = [];
-  for (let k = 1; k < values.length; k++) {
-    const difference = Math.abs(values[k]! - values[k - 1]!);
-    if (difference > same && difference < (FEW_STEPS + 0.5) * least) few.push(difference);
-  }
-  let [sum, steps] = [0, 0];
-  for (const difference of few) {
-    sum += difference;
-    steps += Math.round(difference / least);
-  }
-  const step = sum / steps;
+  const least = differences.reduce((a, b) => Math.min(a, b), Number.POSITIVE_INFINITY);
+  const few = differences.filter((difference) => difference < (FEW_STEPS + 0.5) * least);
+  const steps = few.reduce((sum, difference) => sum + Math.round(difference / least), 0);
+  const step = few.reduce((sum, difference) => sum + difference, 0) / steps;
   const onGrid = few.every((difference) => Math.abs(difference / step - Math.round(difference / step)) < OFF_GRID);
   return few.length >= NEIGHBOURS && onGrid ? step : 0;
 }
@@ -145,7 +140,8 @@ export function quietPart(
   return isOffset ? part : null;
 }
 
-function largestOf(values: Float64Array): number {
+/** Largest magnitude. */
+export function largestOf(values: Float64Array): number {
   let largest = 0;
   for (let k = 0; k < values.length; k++) largest = Math.max(largest, Math.abs(values[k]!));
   return largest;

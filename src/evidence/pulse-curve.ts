@@ -33,9 +33,8 @@ export interface Curve {
   readonly intervals: number;
   /** of f's B-splines, intervals + 3 */
   readonly coefficients: Float64Array;
-  /** λ at the cells' ends */
+  /** λ at the cells' ends, and dλ/ds = 2(1 − p) there */
   readonly linkage: Float64Array;
-  /** dλ/ds = 2(1 − p) there */
   readonly rate: Float64Array;
 }
 
@@ -95,6 +94,14 @@ export function linkageAt({ linkage, rate }: Curve, s: number): number {
   const { interval: cell, u } = place(s, linkage.length - 1);
   const h = 1 / (linkage.length - 1);
   return hermite(linkage[cell]!, h * rate[cell]!, linkage[cell + 1]!, h * rate[cell + 1]!, u);
+}
+
+/**
+ * The same curve with λ and i in each other's place. Its `linkageAt` is the current, which as 2s − λ would lose its digits where λ is nearly
+ * all of 2s.
+ */
+export function exchanged({ coefficients }: Curve): Curve {
+  return curveOf(coefficients.map((f) => -f));
 }
 
 function hermite(y0: number, d0: number, y1: number, d1: number, u: number): number {

@@ -1,4 +1,4 @@
-import type { ChannelNoise } from './pulse-baseline.ts';
+import { type ChannelNoise, largestOf } from './pulse-baseline.ts';
 import { integral, isEdge } from './pulse-flux.ts';
 import type { Samples } from './pulse-record.ts';
 
@@ -40,8 +40,7 @@ export function auditEnergy(
   const recovered_J = integral(time, (k) => Math.max(-voltage[k]! * current[k]!, 0));
   const dissipated_J = integral(time, (k) => resistance_ohm * current[k]! ** 2);
   const charge = integral(time, (k) => current[k]!);
-  let largest = 0;
-  for (const value of voltage) largest = Math.max(largest, Math.abs(value));
+  const largest = largestOf(voltage);
   let squares = (offsetUncertainty_V * charge) ** 2;
   for (let k = 1; k < time.length; k++) {
     const interval = time[k]! - time[k - 1]!;

@@ -1,5 +1,5 @@
 import { InvalidQuantity } from '../physics/invalid-quantity.ts';
-import type { ChannelNoise, QuietPart } from './pulse-baseline.ts';
+import { type ChannelNoise, largestOf, type QuietPart } from './pulse-baseline.ts';
 import type { Samples } from './pulse-record.ts';
 
 /** Where the voltage's offset was taken from; `none`: the pulse shows none, and it was taken as zero. */
@@ -54,12 +54,6 @@ export function voltageOffset(
   return { value_V, source: 'closed loop', standardUncertainty_V: Math.hypot(timing, noisy) };
 }
 
-function largestOf(values: Float64Array): number {
-  let largest = 0;
-  for (let k = 0; k < values.length; k++) largest = Math.max(largest, Math.abs(values[k]!));
-  return largest;
-}
-
 /** Standard uncertainty of ∫v dt between two samples from not knowing when between its samples an edge came: rectangular, each on its own. */
 function edgeUncertainty(time: Float64Array, voltage: Float64Array, from: number, to: number): number {
   const largest = largestOf(voltage);
@@ -109,6 +103,24 @@ export function fluxLinkage(
   const atOrigin = linkage[origin]!;
   if (atOrigin !== 0) for (let k = 0; k < linkage.length; k++) linkage[k]! -= atOrigin;
   return linkage;
+}
+
+/**
+ * How far the trapezia of λ over a branch may be off: their difference to those through every second sample, of which a third would be the
+ * error of a smooth voltage.
+ */
+export function quadratureUncertainty(
+  { time, resistance_ohm }: Samples,
+  voltage: Float64Array,
+  current: Float64Array,
+  { from, to }: RisingBranch,
+): number {
+  const driving = (k: number) => voltage[k]! - resistance_ohm * current[k]!;
+  const trapezium = (a: number, b: number) => ((driving(a) + driving(b)) / 2) * (time[b]! - time[a]!);
+  let difference = 0;
+  for (let k = from; k + 2 <= to; k += 2)
+    difference += trapezium(k, k + 1) + trapezium(k + 1, k + 2) - trapezium(k, k + 2);
+  return Math.abs(difference);
 }
 
 /** The samples `from` to `to` (inclusive) over which the current rises from zero to its peak. */

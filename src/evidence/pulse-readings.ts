@@ -1,5 +1,5 @@
-import { type Curve, linkageAt } from './pulse-curve.ts';
-import type { Readings } from './pulse-fit.ts';
+import { linkageAt } from './pulse-curve.ts';
+import type { Fit, Readings } from './pulse-fit.ts';
 
 /** The samples of a rising branch, λ from its start and i, in their own units. */
 export interface BranchSamples {
@@ -49,7 +49,7 @@ export function evenReadings(branch: BranchSamples, scale: Scale): ScaledReading
 export function readingsAlong(
   branch: BranchSamples,
   scale: Scale,
-  { curve, shift }: { readonly curve: Curve; readonly shift: number },
+  { curve, zeros }: Pick<Fit, 'curve' | 'zeros'>,
   step: number,
 ): ScaledReadings {
   if (branch.linkage.length <= MOST_READINGS) return everySample(branch, scale);
@@ -60,7 +60,7 @@ export function readingsAlong(
     const lambda = linkageAt(curve, s);
     if (2 * s - lambda < last + (STEPS_ACROSS * step) / scale.current) continue;
     last = 2 * s - lambda;
-    edges.push(lambda - shift);
+    edges.push(lambda - zeros.shift);
   }
   return grouped(branch, scale, edges);
 }

@@ -4,6 +4,7 @@ import {
   arcAt,
   type Curve,
   curveOf,
+  exchanged,
   linkageAt,
   logSlopeAt,
   logSlopeTurnAt,
@@ -11,7 +12,18 @@ import {
   sensitivityAt,
   sensitivityOf,
 } from './pulse-curve.ts';
-import { DIFFERENCE, type Fit, fitCurve, ORDER, type Prior, type Readings, thirdDifference } from './pulse-fit.ts';
+import {
+  DIFFERENCE,
+  type Fit,
+  fitCurve,
+  NUISANCES,
+  ORDER,
+  type Prior,
+  type Readings,
+  thirdDifference,
+  type Zeros,
+} from './pulse-fit.ts';
+import { unimodal } from './pulse-shape.ts';
 
 /** A fit with how likely the readings are under its smoothing. */
 interface Candidate extends Fit {
@@ -27,8 +39,8 @@ interface Candidate extends Fit {
 /** The smooth curve through noisy readings, and how sure it is. */
 export interface SmoothCurve {
   readonly curve: Curve;
-  readonly shift: number;
-  /** of the coefficients and then the shift, row-major, (n + 1)² */
+  readonly zeros: Zeros;
+  /** of the coefficients, shift and offset, row-major */
   readonly covariance: Float64Array;
   /** s of the readings, increasing */
   readonly places: Float64Array;
@@ -57,10 +69,10 @@ const INTERVALS = 40;
  * back as the prior's own, and kept where the likelihood rises by it.
  *
  * `noiseVariance`: of a reading of weight one, known beforehand, 0 where it is not; it only keeps the search going until the curve follows
- * the readings. `shiftDeviation`: standard uncertainty of λ's zero. Null where no fit could be made.
+ * the readings. `zeroDeviations`: standard uncertainties of the readings' zeros. Null where no fit could be made.
  */
-export function smoothCurve(readings: Readings, noiseVariance: number, shiftDeviation: number): SmoothCurve | null {
-  const task: Task = { readings, noiseVariance, shiftDeviation };
+export function smoothCurve(readings: Readings, noiseVariance: number, zeroDeviations: Zeros): SmoothCurve | null {
+  const task: Task = { readings, noiseVariance, zeroDeviations };
   const even = (intervals: number) => new Float64Array(intervals).fill(1);
   let plain = scan(task, even(INTERVALS), new Float64Array(INTERVALS + ORDER), STIFFEST);
   if (plain.length === 0) return null;
@@ -79,10 +91,10 @@ export function smoothCurve(readings: Readings, noiseVariance: number, shiftDevi
 }
 
 /** A first curve through readings, soon made and good enough to group samples along. Null where none could be made. */
-export function roughCurve(readings: Readings, noiseVariance: number, shiftDeviation: number): Fit | null {
+export function roughCurve(readings: Readings, noiseVariance: number, zeroDeviations: Zeros): Fit | null {
   const start = new Float64Array(ROUGH_INTERVALS + ORDER);
   const candidates = scan(
-    { readings, noiseVariance, shiftDeviation },
+    { readings, noiseVariance, zeroDeviations },
     new Float64Array(ROUGH_INTERVALS).fill(1),
     start,
     STIFFEST,
@@ -95,18 +107,18 @@ const ROUGH_INTERVALS = 20;
 interface Task {
   readonly readings: Readings;
   readonly noiseVariance: number;
-  readonly shiftDeviation: number;
+  readonly zeroDeviations: Zeros;
 }
 
 /** Rounds of giving the roughness back to the prior, at most. */
-const ROUNDS = 2;
+const ROUNDS = 3;
 
 /** The candidates and those whose prior is as rough over s as the candidates are, for as long as the likelihood rises. */
 function adapted(task: Task, plain: Candidate[]): Candidate[] {
   let candidates = plain;
   for (let round = 0; round < ROUNDS; round++) {
     const before = best(candidates);
-    const weights = priorWeights(curveOf(meanOf(sharesOf(candidates)).slice(0, -1)));
+    const weights = priorWeights(curveOf(meanOf(sharesOf(candidates)).slice(0, -NUISANCES)));
     candidates = [
       ...candidates,
       ...scan(task, weights, before.curve.coefficients, Math.min(before.level + 2, STIFFEST)),
@@ -137,8 +149,11 @@ function scan(task: Task, weights: Float64Array, start: Float64Array, stiffest: 
   return [...candidates, ...between.filter((candidate) => candidate !== null)];
 }
 
+/** A zero with no more uncertainty than this is known. */
+const KNOWN = 1e-9;
+
 function candidateAt(
-  { readings, noiseVariance, shiftDeviation }: Task,
+  { readings, noiseVariance, zeroDeviations }: Task,
   weights: Float64Array,
   level: number,
   start: Float64Array,
@@ -149,9 +164,13 @@ function candidateAt(
   const logSmoothing = level * Math.LN10 + 5 * Math.log(intervals);
   const smoothing = Math.exp(logSmoothing);
   const variance = before?.variance ?? noiseVariance;
-  const shiftPrecision = variance / (shiftDeviation * shiftDeviation);
-  const prior = { smoothing, weights, shiftPrecision };
-  const fit = fitCurve(readings, prior, start, before?.shift ?? 0);
+  const prior = {
+    smoothing,
+    weights,
+    shiftPrecision: variance / Math.max(zeroDeviations.shift, KNOWN) ** 2,
+    offsetPrecision: variance / Math.max(zeroDeviations.offset, KNOWN) ** 2,
+  };
+  const fit = fitCurve(readings, prior, start, before?.zeros ?? { shift: 0, offset: 0 });
   if (!fit) return null;
   const freedom = readings.linkage.length - ORDER;
   const deviance = freedom * Math.log(fit.objective) + fit.logDeterminant - weights.length * logSmoothing;
@@ -163,8 +182,8 @@ function best(candidates: readonly Candidate[]): Candidate {
 }
 
 /** Width over which the roughness found is spread, in s, and the least of it beside its mean: both by trial over simulated pulses. */
-const SPREAD = 0.06;
-const LEAST_ROUGHNESS = 0.01;
+const SPREAD = 0.05;
+const LEAST_ROUGHNESS = 0.0003;
 
 /** Weights of the third differences, inversely as the curve's own mean square of them around each place; geometric mean one. */
 function priorWeights({ intervals, coefficients }: Curve): Float64Array {
@@ -203,9 +222,9 @@ function sharesOf(candidates: readonly Candidate[]): Share[] {
   return counted.map(({ candidate, share }) => ({ candidate, share: share / total }));
 }
 
-/** The average's coefficients and shift. */
+/** The average's coefficients and zeros. */
 function meanOf(shares: readonly Share[]): Float64Array {
-  const mean = new Float64Array(shares[0]!.candidate.curve.coefficients.length + 1);
+  const mean = new Float64Array(shares[0]!.candidate.curve.coefficients.length + NUISANCES);
   for (const { candidate, share } of shares) {
     parameters(candidate).forEach((value, a) => {
       mean[a]! += share * value;
@@ -228,23 +247,24 @@ function averageOf(candidates: readonly Candidate[], { linkage }: Readings): Smo
       }
     }
   }
-  const curve = curveOf(mean.slice(0, -1));
-  const shift = mean[size - 1]!;
-  return { curve, shift, covariance, places: linkage.map((lambda) => arcAt(curve, lambda + shift)).sort() };
+  const shaped = unimodal(mean, covariance, size - NUISANCES);
+  const curve = curveOf(shaped.slice(0, -NUISANCES));
+  const zeros = { shift: shaped[size - 2]!, offset: shaped[size - 1]! };
+  return { curve, zeros, covariance, places: linkage.map((lambda) => arcAt(curve, lambda + zeros.shift)).sort() };
 }
 
-function parameters({ curve, shift }: Fit): Float64Array {
-  const values = new Float64Array(curve.coefficients.length + 1);
-  values.set(curve.coefficients);
-  values[curve.coefficients.length] = shift;
-  return values;
+function parameters({ curve, zeros }: Fit): Float64Array {
+  return Float64Array.from([...curve.coefficients, zeros.shift, zeros.offset]);
 }
 
 /** Parameters that the readings decide: the trace of the influence matrix, all parameters less those that the prior decides. */
 function decided({ curve, prior, factor }: Candidate): number {
-  const size = curve.coefficients.length + 1;
+  const n = curve.coefficients.length;
+  const size = n + NUISANCES;
   const inverseMatrix = inverse(factor, size);
-  let byPrior = prior.shiftPrecision * inverseMatrix[size * size - 1]!;
+  let byPrior =
+    prior.shiftPrecision * inverseMatrix[n * (size + 1)]! +
+    prior.offsetPrecision * inverseMatrix[(n + 1) * (size + 1)]!;
   for (let r = 0; r < prior.weights.length; r++) {
     let quadratic = 0;
     for (let a = 0; a <= ORDER; a++) {
@@ -267,8 +287,6 @@ export interface CurvePoint {
   readonly logSlopeDeviation: number;
   /** standard uncertainty of λ at this current */
   readonly linkageDeviation: number;
-  /** d ln(dλ/di)/di */
-  readonly logSlopeTurn: number;
 }
 
 /** The curve at each s. */
@@ -278,10 +296,12 @@ export function pointsAlong(
 ): CurvePoint[] {
   const n = curve.coefficients.length;
   const table = sensitivityOf(curve);
+  const currents = exchanged(curve);
   const row = new Float64Array(n);
   const deviation = () => {
     let sum = 0;
-    for (let a = 0; a < n; a++) for (let b = 0; b < n; b++) sum += row[a]! * row[b]! * covariance[a * (n + 1) + b]!;
+    for (let a = 0; a < n; a++)
+      for (let b = 0; b < n; b++) sum += row[a]! * row[b]! * covariance[a * (n + NUISANCES) + b]!;
     return Math.sqrt(Math.max(sum, 0));
   };
   return places.map((s) => {
@@ -296,11 +316,10 @@ export function pointsAlong(
     sensitivityAt(table, n, s, 1 / p, row);
     return {
       linkage,
-      current: 2 * s - linkage,
+      current: linkageAt(currents, s),
       slope: 1 / steepness,
       logSlopeDeviation,
       linkageDeviation: deviation(),
-      logSlopeTurn: -turn / (2 * p),
     };
   });
 }

@@ -3,12 +3,20 @@ import { InvalidQuantity } from '../physics/invalid-quantity.ts';
 import type { Method } from '../physics/method.ts';
 import { integrate } from '../physics/numerics/quadrature.ts';
 import { findRoot } from '../physics/numerics/roots.ts';
-import { type ChannelNoise, noiseOf, quietPart } from './pulse-baseline.ts';
+import { type ChannelNoise, largestOf, noiseOf, quietPart } from './pulse-baseline.ts';
 import { arcAt, type Curve, linkageAt, logSlopeAt } from './pulse-curve.ts';
 import { auditEnergy, type EnergyAudit } from './pulse-energy.ts';
-import { fluxLinkage, type OffsetSource, onsetUncertainty, risingBranch, voltageOffset } from './pulse-flux.ts';
+import type { Zeros } from './pulse-fit.ts';
+import {
+  fluxLinkage,
+  type OffsetSource,
+  onsetUncertainty,
+  quadratureUncertainty,
+  risingBranch,
+  voltageOffset,
+} from './pulse-flux.ts';
 import { evenReadings, readingsAlong, type Scale, type ScaledReadings, scaleOf } from './pulse-readings.ts';
-import { type Pulse, samplesOf } from './pulse-record.ts';
+import { type Pulse, type Samples, samplesOf } from './pulse-record.ts';
 import { pointsAlong, roughCurve, type SmoothCurve, smoothCurve } from './pulse-smoothing.ts';
 
 export type { Pulse } from './pulse-record.ts';
@@ -36,6 +44,24 @@ export interface PulseAnalysis {
   readonly method: Method;
 }
 
+/** What the spline itself leaves of λ, relative: seen over exact pulses of every characteristic tried. */
+const SPLINE = 1e-6;
+
+/** Samples of the rise further apart than this share of the whole, in λ and current together, are too few to draw a curve through. */
+const FURTHEST_APART = 0.1;
+
+/** The last sample of the rise up to which samples lie near enough to each other; what is beyond is left out of the sweep. */
+function denseEnd(linkage: Float64Array, current: Float64Array, from: number, last: number): number {
+  let to = last;
+  while (
+    to - from > 6 &&
+    ((linkage[to]! - linkage[to - 1]!) / linkage[last]! + (current[to]! - current[to - 1]!) / current[last]!) / 2 >
+      FURTHEST_APART
+  )
+    to--;
+  return to;
+}
+
 /** Points of the sweep: evenly along the curve, so that linear part and saturation have as many. */
 const POINTS = 200;
 
@@ -47,12 +73,15 @@ const POINTS = 200;
  *
  * A negative pulse is mirrored. Throws `InvalidQuantity` as `samplesOf` and `risingBranch` do.
  *
- * PENDING TABLE
+ * | quantity | recordings | worst relative error | against |
+ * |---|---|---|---|
+ * | 30 % drop current | clean, 200 and 1000 samples, nine characteristics | 1e-3 | the characteristic |
+ * | the same | 12 bit and 1 LSB rms of noise, from 200 samples; from 2000 | 3e-2; 1.5e-2 | the characteristic |
  */
 export function analysePulse(pulse: Pulse): PulseAnalysis {
   const samples = samplesOf(pulse);
   const { time, mirrored } = samples;
-  const noise = { voltage: noiseOf(time, samples.voltage), current: noiseOf(time, samples.current) };
+  const noise = channelNoise(samples);
   const before = quietPart(samples.voltage, samples.current, noise);
   const quiet = before ?? quietPart(samples.voltage, samples.current, noise, true);
   const currentOffset = quiet?.current ?? 0;
@@ -63,7 +92,9 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
   const voltage = samples.voltage.map((value) => value - offset.value_V);
   const onset = before ? before.count - 1 : 0;
   const linkage = fluxLinkage(samples, voltage, current, onset);
-  const { from, to } = risingBranch(samples, voltage, current, linkage, onset, noise.current);
+  const rise = risingBranch(samples, voltage, current, linkage, onset, noise.current);
+  const { from, to: last } = rise;
+  const to = denseEnd(linkage, current, from, last);
 
   const branch = {
     linkage: linkage.slice(from, to + 1),
@@ -72,25 +103,26 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
   };
   const scale = scaleOf(branch);
   // When the voltage came between two samples is not known, hence where on the curve λ is zero; without a quiet part even less.
+  const offsetDeviation = quiet ? Math.hypot(noise.current.deviation / Math.sqrt(quiet.count), noise.current.bias) : 0;
   const shiftDeviation = before ? onsetUncertainty(time, voltage, onset) : UNKNOWN_START * scale.linkage;
-  const { smoothed, readings } = characteristicOf(branch, scale, noise.current, shiftDeviation);
-  const end = Math.min(arcAt(smoothed.curve, branch.linkage.at(-1)! / scale.linkage + smoothed.shift), 1);
-  const currentUncertainty = quiet
-    ? Math.hypot(noise.current.deviation / Math.sqrt(quiet.count), noise.current.bias)
-    : 0;
+  const zeroDeviations = { shift: shiftDeviation / scale.linkage, offset: offsetDeviation / scale.current };
+  const { smoothed, readings } = characteristicOf(branch, scale, noise.current, zeroDeviations);
+  const end = Math.min(arcAt(smoothed.curve, branch.linkage.at(-1)! / scale.linkage + smoothed.zeros.shift), 1);
   const points = sweepPoints(smoothed, readings, scale, end, {
     voltage_V: Math.hypot(offset.standardUncertainty_V, noise.voltage.bias),
-    current_A: currentUncertainty,
+    linkage_Wb: quadratureUncertainty(samples, voltage, current, rise),
   });
   const unit_J = scale.linkage * scale.current;
   const sign = mirrored ? -1 : 1;
   return {
     sweep: points.sweep,
-    energy: auditEnergy(samples, voltage, current, noise, offset.standardUncertainty_V, {
-      stored_J: unit_J * energyAlong(smoothed.curve, end),
-      remaining_J:
-        unit_J * energyAlong(smoothed.curve, arcAtCurrent(smoothed.curve, current.at(-1)! / scale.current, end)),
-    }),
+    energy: finite(
+      auditEnergy(samples, voltage, current, noise, offset.standardUncertainty_V, {
+        stored_J: unit_J * energyAlong(smoothed.curve, end),
+        remaining_J:
+          unit_J * energyAlong(smoothed.curve, arcAtCurrent(smoothed.curve, current.at(-1)! / scale.current, end)),
+      }),
+    ),
     voltageOffset_V: offset.value_V * sign,
     voltageOffsetSource: offset.source,
     currentOffset_A: currentOffset * sign,
@@ -98,6 +130,22 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
     currentNoise_A: noise.current.deviation,
     method: methodOf(points, offset.source, branch.time.length),
   };
+}
+
+/**
+ * Noise of both channels. A voltage that stands still without noise does not show how finely it was digitised; where the current shows its own
+ * step the voltage is taken to be as fine beside its peak, as both channels of one instrument are.
+ */
+function channelNoise({ time, voltage, current }: Samples): { voltage: ChannelNoise; current: ChannelNoise } {
+  const noise = { voltage: noiseOf(time, voltage), current: noiseOf(time, current) };
+  if (noise.voltage.deviation > 0 || noise.current.step === 0) return noise;
+  const step = (noise.current.step / largestOf(current)) * largestOf(voltage);
+  return { ...noise, voltage: { deviation: step / Math.sqrt(12), step, bias: step / Math.sqrt(12) } };
+}
+
+function finite(audit: EnergyAudit): EnergyAudit {
+  if (Object.values(audit).every(Number.isFinite)) return audit;
+  throw new InvalidQuantity('/current_A', 'the energies of this pulse are beyond the range of numbers');
 }
 
 /** The differential sweep of an analysed pulse, for `measuredCharacteristic` and all that goes through it. */
@@ -127,14 +175,13 @@ function characteristicOf(
   branch: { readonly linkage: Float64Array; readonly current: Float64Array; readonly time: Float64Array },
   scale: Scale,
   noise: ChannelNoise,
-  shiftDeviation: number,
+  zeroDeviations: Zeros,
 ): { smoothed: SmoothCurve; readings: ScaledReadings } {
   const variance = (noise.deviation / scale.current) ** 2;
-  const shift = shiftDeviation / scale.linkage;
   const first = evenReadings(branch, scale);
-  const rough = first.samples > 1 ? roughCurve(first, variance / first.samples, shift) : null;
+  const rough = first.samples > 1 ? roughCurve(first, variance / first.samples, zeroDeviations) : null;
   const readings = rough ? readingsAlong(branch, scale, rough, noise.step) : first;
-  const smoothed = smoothCurve(readings, variance / readings.samples, shift);
+  const smoothed = smoothCurve(readings, variance / readings.samples, zeroDeviations);
   if (!smoothed)
     throw new InvalidQuantity('/current_A', 'no rising flux characteristic can be put through the samples');
   return { smoothed, readings };
@@ -151,28 +198,35 @@ function sweepPoints(
   readings: ScaledReadings,
   scale: Scale,
   end: number,
-  uncertainty: { readonly voltage_V: number; readonly current_A: number },
+  uncertainty: { readonly voltage_V: number; readonly linkage_Wb: number },
 ): Points {
   const places = Array.from({ length: POINTS }, (_, k) => (end * k) / (POINTS - 1));
   const points = pointsAlong(smoothed, places);
   const peak = points.at(-1)!;
-  const elapsed = readings.time.at(-1)! - readings.time[0]!;
-  return {
-    sweep: {
-      current_A: points.map(({ current }) => current * scale.current),
-      fluxLinkage_Wb: points.map(({ linkage }) => linkage * scale.linkage),
-      differentialInductance_H: points.map(({ slope }) => slope * (scale.linkage / scale.current)),
-      standardUncertainty_H: points.map(({ slope, linkage, logSlopeDeviation, logSlopeTurn }) => {
-        const byVoltage = (uncertainty.voltage_V * slownessAt(readings, linkage - smoothed.shift)) / scale.linkage;
-        const byCurrent = (uncertainty.current_A / scale.current) * logSlopeTurn;
-        return slope * (scale.linkage / scale.current) * Math.hypot(logSlopeDeviation, byVoltage, byCurrent);
-      }),
-    },
-    linkageUncertainty: Math.hypot(
-      peak.linkageDeviation / peak.linkage,
-      (uncertainty.voltage_V * elapsed) / (peak.linkage * scale.linkage),
-    ),
+  const sweep: Record<keyof PulseSweep, number[]> = {
+    current_A: [],
+    fluxLinkage_Wb: [],
+    differentialInductance_H: [],
+    standardUncertainty_H: [],
   };
+  for (const { current, linkage, slope, logSlopeDeviation } of points) {
+    const current_A = current * scale.current;
+    const inductance_H = slope * (scale.linkage / scale.current);
+    const byVoltage = (uncertainty.voltage_V * slownessAt(readings, linkage - smoothed.zeros.shift)) / scale.linkage;
+    const relative = Math.hypot(logSlopeDeviation, byVoltage, uncertainty.linkage_Wb / scale.linkage);
+    if (!(inductance_H > 0 && Number.isFinite(inductance_H * relative))) {
+      throw new InvalidQuantity('/current_A', 'the current stands still while the flux linkage rises');
+    }
+    // Where the current hardly rises rounding may put a point at the one before.
+    if (current_A <= (sweep.current_A.at(-1) ?? Number.NEGATIVE_INFINITY)) continue;
+    sweep.current_A.push(current_A);
+    sweep.fluxLinkage_Wb.push(linkage * scale.linkage);
+    sweep.differentialInductance_H.push(inductance_H);
+    sweep.standardUncertainty_H.push(inductance_H * relative);
+  }
+  const elapsed = readings.time.at(-1)! - readings.time[0]!;
+  const byIntegration = Math.hypot(uncertainty.voltage_V * elapsed, uncertainty.linkage_Wb) / scale.linkage;
+  return { sweep, linkageUncertainty: Math.hypot(peak.linkageDeviation, byIntegration) / peak.linkage + SPLINE };
 }
 
 /** dt/dλ of the readings around a λ of theirs: a voltage wrong by e makes dλ/di wrong by e·dt/dλ of itself. */

@@ -31,7 +31,7 @@ const DEFAULT_RISK = 0.05;
 export function evaluate(request: ApprovalRequest): Evaluation {
   const results = CHECKS.flatMap((check) => checkResult(check, request));
   const checks = [...results, ...untestedLimits(request, results)];
-  return { ...verdictOf(request, checks), checks, cautions: cautionsFor(request) };
+  return { ...verdictOf(request, checks), checks, cautions: cautionsFor(request, checks) };
 }
 
 function checkResult(check: Check, request: ApprovalRequest): CheckResult[] {

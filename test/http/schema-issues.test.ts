@@ -35,6 +35,15 @@ describe('errors of a body, by pointer', () => {
     expect(pointers(InductorSchema, 5)).toEqual(['']);
   });
 
+  it('names limits that contradict each other, and a risk that no decision can be taken at', () => {
+    const inductance = { nominal_H: 1, lower_H: 2, upper_H: 1 };
+    const body = {
+      part: { number: 'LG-1', revision: 'A', drawing: { inductance } },
+      duty: { peakCurrent_A: 1, risk: 1e-308 },
+    };
+    expect(pointers(ApprovalRequestSchema, body).sort()).toEqual(['/duty/risk', '/part/drawing/inductance/upper_H']);
+  });
+
   it('names a misspelt limit deep in an approval', () => {
     const body = {
       part: { number: 'LG-1', revision: 'A', drawing: { inductance: { nominal_H: 1, lower_H: 1, uper_H: 1 } } },

@@ -61,9 +61,22 @@ function hotSpot(request: ApprovalRequest): Observation[] {
     return [{ ...common, method: UNKNOWN, undecided: missing }];
   }
   const core = rippleCoreLoss(part.construction, request);
-  const state = heated(winding, dutyCurrent(duty.rmsCurrent_A, request), cooling, ambient_degC, core);
+  const state = heated(
+    winding,
+    dutyCurrent(duty.rmsCurrent_A, request),
+    cooling,
+    ambient_degC,
+    core === 'unknown' ? undefined : core,
+  );
   if (!state.steady) return [{ ...common, method: state.method, missedBecause: state.reason }];
-  return [{ ...common, value: state.temperature_degC, ...errorOf(state.rise_K, state.method) }];
+  return [
+    {
+      ...common,
+      value: state.temperature_degC,
+      ...errorOf(state.rise_K, state.method),
+      ...(core === 'unknown' && { passIsUndecided: 'the core loses as well, and its material states no loss' }),
+    },
+  ];
 }
 
 const UNKNOWN: Method = { name: 'none', references: [], relativeError: 1, validity: 'losses or cooling unknown' };
@@ -105,13 +118,13 @@ function dutyCurrent(rmsCurrent_A: number, { duty }: ApprovalRequest): WindingCu
   return { direct_A, harmonics: [{ frequency_Hz, rms_A: ripple_A }] };
 }
 
-/** Loss of the core under the ripple's symmetric triangle of flux, at the mean current; none without ripple or loss data. */
+/** Loss of the core under the ripple's symmetric triangle of flux, up to the peak current; none without a ripple, unknown without loss data. */
 function rippleCoreLoss(construction: Construction, { duty }: ApprovalRequest) {
   const { coil } = construction;
   const { rippleCurrent_A, frequency_Hz, peakCurrent_A, coreTemperature_degC } = duty;
   if (coil.shape !== 'cored' || rippleCurrent_A === undefined || frequency_Hz === undefined) return undefined;
   const { loss } = coil.core.material;
-  if (!loss) return undefined;
+  if (!loss) return 'unknown';
   const characteristic = constructionCharacteristic(construction, coreTemperature_degC);
   const swing_Wb =
     characteristic.fluxLinkage_Wb(peakCurrent_A) - characteristic.fluxLinkage_Wb(peakCurrent_A - rippleCurrent_A);

@@ -15,13 +15,15 @@ import { UncertaintyMap } from './uncertainty.ts';
 
 const DrawingSchema = z
   .strictObject({
-    inductance: z.strictObject({
-      nominal_H: q.inductance_H,
-      lower_H: q.inductance_H,
-      upper_H: q.inductance_H,
-      testCurrent_A: z.number().min(0).max(1e9).exactOptional().meta({ description: 'A; default 0' }),
-      testFrequency_Hz: q.frequency_Hz.exactOptional(),
-    }),
+    inductance: z
+      .strictObject({
+        nominal_H: q.inductance_H,
+        lower_H: q.inductance_H,
+        upper_H: q.inductance_H,
+        testCurrent_A: z.number().min(0).max(1e9).exactOptional().meta({ description: 'A; default 0' }),
+        testFrequency_Hz: q.frequency_Hz.exactOptional(),
+      })
+      .refine(({ lower_H, upper_H }) => lower_H < upper_H, { message: 'must exceed lower_H', path: ['upper_H'] }),
     resistance: z.strictObject({ upper_ohm: q.resistance_ohm, temperature_degC: q.temperature_degC }).exactOptional(),
     saturation: z
       .strictObject({

@@ -48,6 +48,6 @@ export const standardUncertainty = z
 export const fraction = z.number().gt(0).lt(1).meta({ description: 'a fraction between 0 and 1, both excluded' });
 export const risk = z
   .number()
-  .gt(0)
+  .min(1e-300)
   .max(0.5)
   .meta({ description: 'accepted probability of a wrong decision; up to 0.5; default 0.05' });

@@ -98,8 +98,9 @@ export const transientRoute = (app: FastifyInstance, ports: CalculationPorts) =>
       },
     ],
     calculation: transient,
-    hazards: (_request, { peakVoltage_V, energy }) => ({
-      turnOffVoltage_V: peakVoltage_V,
+    hazards: ({ event }, { peakVoltage_V, energy }) => ({
+      // What a source puts on when energising is its own voltage, not one that turning off raises.
+      ...(event === 'interrupt' && { turnOffVoltage_V: peakVoltage_V }),
       storedEnergy_J: Math.max(energy.initial_J, energy.final_J),
     }),
   });

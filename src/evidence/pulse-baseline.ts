@@ -87,7 +87,9 @@ export interface QuietPart {
 }
 
 /** Fewest samples of a quiet part. */
-const FEWEST_QUIET = 4;
+const FEWEST_QUIET = 3;
+/** Fewest in which a slope is looked for: of fewer, chance makes one. */
+const FEWEST_SLOPING = 6;
 /** A sample further from the mean so far, in standard deviations, is no longer quiet. */
 const OUTSIDE = 6;
 /** A slope of more standard errors than this is one. */
@@ -122,7 +124,7 @@ export function quietPart(
   }
   const sloping = (values: Float64Array, rounding: number) => slopes(count, (k) => values[at(k)]!, rounding);
   while (
-    count >= FEWEST_QUIET &&
+    count >= FEWEST_SLOPING &&
     (sloping(voltage, ROUNDING * largest.voltage) || sloping(current, ROUNDING * largest.current))
   ) {
     count = Math.floor(0.7 * count);

@@ -50,8 +50,11 @@ export function voltageOffset(
   const duration = time[last]! - time[0]!;
   const value_V = integral(time, (k) => voltage[k]! - resistance_ohm * current[k]!) / duration;
   const timing = edgeUncertainty(time, voltage, 0, last) / duration;
+  // What the current has not quite returned by is worth its part of λ, twice that for the inductance at zero current being larger.
+  const reached = integral(time, (k) => Math.max(voltage[k]! - resistance_ohm * current[k]! - value_V, 0));
+  const short = (2 * (Math.abs(current[last]! - current[0]!) / largest) * reached) / duration;
   const noisy = Math.hypot(noise.voltage.deviation / Math.sqrt(time.length), noise.voltage.bias);
-  return { value_V, source: 'closed loop', standardUncertainty_V: Math.hypot(timing, noisy) };
+  return { value_V, source: 'closed loop', standardUncertainty_V: Math.hypot(timing, noisy, short) };
 }
 
 /** Standard uncertainty of ∫v dt between two samples from not knowing when between its samples an edge came: rectangular, each on its own. */
@@ -123,10 +126,11 @@ export function quadratureUncertainty(
   return Math.abs(difference);
 }
 
-/** The samples `from` to `to` (inclusive) over which the current rises from zero to its peak. */
+/** Samples over which the current rises from zero: `from` to `to`, inclusive, close enough together to show the curve, and `peak`. */
 export interface RisingBranch {
   readonly from: number;
   readonly to: number;
+  readonly peak: number;
 }
 
 /** Fewest samples of a rise that a curve can be put through. */
@@ -151,33 +155,53 @@ export function risingBranch(
   onset: number,
   noise: ChannelNoise,
 ): RisingBranch {
-  const peak = largestCurrent(current);
-  if (!(peak > SEEN * noise.deviation)) {
+  const largest = largestCurrent(current);
+  if (!(largest > SEEN * noise.deviation)) {
     throw new InvalidQuantity('/current_A', `the current never rises out of its noise, ${noise.deviation} A`);
   }
   let end = onset;
-  while (end < current.length - 1 && current[end]! < 0.9 * peak) end++;
-  while (end < current.length - 1 && current[end]! > peak / 2) end++;
-  let to = onset;
-  for (let k = onset; k <= end; k++) if (linkage[k]! > linkage[to]!) to = k;
+  while (end < current.length - 1 && current[end]! < 0.9 * largest) end++;
+  while (end < current.length - 1 && current[end]! > largest / 2) end++;
+  let peak = onset;
+  for (let k = onset; k <= end; k++) if (linkage[k]! > linkage[peak]!) peak = k;
+  if (!(current[peak]! > largest / 2 && linkage[peak]! > 0)) throw notRising(samples, voltage);
   const steepest = largestOf(voltage);
   const from = settledFrom(voltage, onset, steepest);
-  while (to > from && isEdge(voltage, to, steepest)) to--;
-  if (!(current[to]! > peak / 2 && linkage[to]! > 0)) throw notRising(samples, voltage);
+  while (peak > from && isEdge(voltage, peak, steepest)) peak--;
   const first = current[onset]!;
-  if (Math.abs(first) > Math.max(NEAR_ZERO * peak, SEEN * noise.deviation)) {
+  if (Math.abs(first) > Math.max(NEAR_ZERO * largest, SEEN * noise.deviation)) {
     throw new InvalidQuantity(
       `/current_A/${onset}`,
-      `a pulse starts at zero current; this one starts at ${((100 * first) / peak).toPrecision(3)} % of its peak`,
+      `a pulse starts at zero current; this one starts at ${((100 * first) / largest).toPrecision(3)} % of its peak`,
     );
   }
-  if (to - from + 1 < FEWEST_RISING) {
+  if (peak - from + 1 < FEWEST_RISING || !(linkage[peak]! > 0)) {
     throw new InvalidQuantity(
       '/current_A',
-      `only ${to - from + 1} samples lie on the rise of the current; at least ${FEWEST_RISING} are needed`,
+      `only ${peak - from + 1} samples lie on the rise of the current; at least ${FEWEST_RISING} are needed`,
     );
   }
-  return { from, to };
+  return { from, to: denseUpTo(linkage, current, from, peak), peak };
+}
+
+/** Two samples further apart than this part of the curve's length, and than so many times the mean, do not show what is between them. */
+const FAR = 0.1;
+const FAR_IN_MEANS = 4;
+
+/**
+ * The last sample before the peak that is not far from the one before it. In deep saturation the current may come up within a few samples, which
+ * say too little of how it did to be let near the knee.
+ */
+function denseUpTo(linkage: Float64Array, current: Float64Array, from: number, peak: number): number {
+  const far = Math.max(FAR, FAR_IN_MEANS / (peak - from));
+  let to = peak;
+  while (to - from >= FEWEST_RISING) {
+    const byLinkage = (linkage[to]! - linkage[to - 1]!) / linkage[peak]!;
+    const byCurrent = (current[to]! - current[to - 1]!) / current[peak]!;
+    if ((byLinkage + byCurrent) / 2 <= far) break;
+    to--;
+  }
+  return to;
 }
 
 /** Intervals after the onset in which the voltage comes up, and a change in them that is counted as its coming. */

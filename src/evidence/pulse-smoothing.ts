@@ -111,7 +111,7 @@ interface Task {
 }
 
 /** Rounds of giving the roughness back to the prior, at most. */
-const ROUNDS = 3;
+const ROUNDS = 4;
 
 /** The candidates and those whose prior is as rough over s as the candidates are, for as long as the likelihood rises. */
 function adapted(task: Task, plain: Candidate[]): Candidate[] {
@@ -182,8 +182,8 @@ function best(candidates: readonly Candidate[]): Candidate {
 }
 
 /** Width over which the roughness found is spread, in s, and the least of it beside its mean: both by trial over simulated pulses. */
-const SPREAD = 0.05;
-const LEAST_ROUGHNESS = 0.0003;
+const SPREAD = 0.06;
+const LEAST_ROUGHNESS = 1e-4;
 
 /** Weights of the third differences, inversely as the curve's own mean square of them around each place; geometric mean one. */
 function priorWeights({ intervals, coefficients }: Curve): Float64Array {

@@ -12,10 +12,18 @@ import {
   type OffsetSource,
   onsetUncertainty,
   quadratureUncertainty,
+  type RisingBranch,
   risingBranch,
   voltageOffset,
 } from './pulse-flux.ts';
-import { evenReadings, readingsAlong, type Scale, type ScaledReadings, scaleOf } from './pulse-readings.ts';
+import {
+  type BranchSamples,
+  evenReadings,
+  readingsAlong,
+  type Scale,
+  type ScaledReadings,
+  scaleOf,
+} from './pulse-readings.ts';
 import { type Pulse, type Samples, samplesOf } from './pulse-record.ts';
 import { pointsAlong, roughCurve, type SmoothCurve, smoothCurve } from './pulse-smoothing.ts';
 
@@ -46,21 +54,6 @@ export interface PulseAnalysis {
 
 /** What the spline itself leaves of λ, relative: seen over exact pulses of every characteristic tried. */
 const SPLINE = 1e-6;
-
-/** Samples of the rise further apart than this share of the whole, in λ and current together, are too few to draw a curve through. */
-const FURTHEST_APART = 0.1;
-
-/** The last sample of the rise up to which samples lie near enough to each other; what is beyond is left out of the sweep. */
-function denseEnd(linkage: Float64Array, current: Float64Array, from: number, last: number): number {
-  let to = last;
-  while (
-    to - from > 6 &&
-    ((linkage[to]! - linkage[to - 1]!) / linkage[last]! + (current[to]! - current[to - 1]!) / current[last]!) / 2 >
-      FURTHEST_APART
-  )
-    to--;
-  return to;
-}
 
 /** Points of the sweep: evenly along the curve, so that linear part and saturation have as many. */
 const POINTS = 200;
@@ -93,8 +86,7 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
   const onset = before ? before.count - 1 : 0;
   const linkage = fluxLinkage(samples, voltage, current, onset);
   const rise = risingBranch(samples, voltage, current, linkage, onset, noise.current);
-  const { from, to: last } = rise;
-  const to = denseEnd(linkage, current, from, last);
+  const { from, to } = rise;
 
   const branch = {
     linkage: linkage.slice(from, to + 1),
@@ -104,7 +96,10 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
   const scale = scaleOf(branch);
   // When the voltage came between two samples is not known, hence where on the curve λ is zero; without a quiet part even less.
   const offsetDeviation = quiet ? Math.hypot(noise.current.deviation / Math.sqrt(quiet.count), noise.current.bias) : 0;
-  const shiftDeviation = before ? onsetUncertainty(time, voltage, onset) : UNKNOWN_START * scale.linkage;
+  const onsetDeviation = onsetUncertainty(time, voltage, onset);
+  const shiftDeviation = before
+    ? onsetDeviation
+    : Math.hypot(onsetDeviation, unseenStart(branch, scale, noise.current));
   const zeroDeviations = { shift: shiftDeviation / scale.linkage, offset: offsetDeviation / scale.current };
   const { smoothed, readings } = characteristicOf(branch, scale, noise.current, zeroDeviations);
   const end = Math.min(arcAt(smoothed.curve, branch.linkage.at(-1)! / scale.linkage + smoothed.zeros.shift), 1);
@@ -118,7 +113,7 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
     sweep: points.sweep,
     energy: finite(
       auditEnergy(samples, voltage, current, noise, offset.standardUncertainty_V, {
-        stored_J: unit_J * energyAlong(smoothed.curve, end),
+        stored_J: unit_J * energyAlong(smoothed.curve, end) + energyBeyond(linkage, current, rise),
         remaining_J:
           unit_J * energyAlong(smoothed.curve, arcAtCurrent(smoothed.curve, current.at(-1)! / scale.current, end)),
       }),
@@ -128,7 +123,7 @@ export function analysePulse(pulse: Pulse): PulseAnalysis {
     currentOffset_A: currentOffset * sign,
     voltageNoise_V: noise.voltage.deviation,
     currentNoise_A: noise.current.deviation,
-    method: methodOf(points, offset.source, branch.time.length),
+    method: methodOf(points, offset.source, rise),
   };
 }
 
@@ -153,8 +148,14 @@ export function toSweep({ sweep }: PulseAnalysis): Sweep {
   return { kind: 'differential', current_A: sweep.current_A, inductance_H: sweep.differentialInductance_H };
 }
 
-/** Standard uncertainty of λ's zero where no quiet part shows the onset, in parts of the largest λ. */
-const UNKNOWN_START = 0.1;
+/**
+ * Standard uncertainty of λ's zero where no quiet part shows the onset: what the first sample's current, or its noise, may be worth (twice its part
+ * of the largest λ, as the inductance at zero current is larger), and what came between two samples.
+ */
+function unseenStart({ linkage, current }: BranchSamples, scale: Scale, { deviation }: ChannelNoise): number {
+  const first = Math.max(Math.abs(current[0]!), 2 * deviation) / scale.current;
+  return Math.hypot(2 * first * scale.linkage, linkage[1]! - linkage[0]!);
+}
 
 /** A sample further than this many standard deviations beyond both its neighbours is a spike. */
 const SPIKE = 8;
@@ -172,7 +173,7 @@ function withoutSpikes(current: Float64Array, { deviation }: ChannelNoise): Floa
 
 /** The smooth curve through a branch; many samples are grouped along a first, rough one. */
 function characteristicOf(
-  branch: { readonly linkage: Float64Array; readonly current: Float64Array; readonly time: Float64Array },
+  branch: BranchSamples,
   scale: Scale,
   noise: ChannelNoise,
   zeroDeviations: Zeros,
@@ -256,6 +257,13 @@ function energyAlong(curve: Curve, s: number): number {
   return sum;
 }
 
+/** ∫ i dλ over the samples from the branch's end to the peak, by trapezia: λ changes little there. */
+function energyBeyond(linkage: Float64Array, current: Float64Array, { to, peak }: RisingBranch): number {
+  let sum = 0;
+  for (let k = to; k < peak; k++) sum += ((current[k]! + current[k + 1]!) / 2) * (linkage[k + 1]! - linkage[k]!);
+  return sum;
+}
+
 /** s at a current in coordinates of one, kept within 0 and `end`. */
 function arcAtCurrent(curve: Curve, current: number, end: number): number {
   const excess = (s: number) => 2 * s - linkageAt(curve, s) - current;
@@ -270,7 +278,11 @@ const OFFSET_WORDS: Record<OffsetSource, string> = {
   none: 'no quiet part and no return to zero current: voltage offset taken as zero',
 };
 
-function methodOf({ sweep, linkageUncertainty }: Points, source: OffsetSource, samples: number): Method {
+function methodOf(
+  { sweep, linkageUncertainty }: Points,
+  source: OffsetSource,
+  { from, to, peak }: RisingBranch,
+): Method {
   return {
     name: 'flux linkage by integrating v − R·i; ln(di/dλ) a spline smoothed by restricted maximum likelihood',
     references: [
@@ -281,7 +293,10 @@ function methodOf({ sweep, linkageUncertainty }: Points, source: OffsetSource, s
     ],
     relativeError: Math.min(2 * linkageUncertainty, 1),
     validity:
-      `the rise from zero current to ${sweep.current_A.at(-1)!.toPrecision(4)} A in ${samples} samples, nothing extrapolated; ` +
+      `the rise from zero current to ${sweep.current_A.at(-1)!.toPrecision(4)} A in ${to - from + 1} samples, nothing extrapolated` +
+      (peak > to
+        ? ` (the last ${peak - to}, up to the peak, lie too far apart to follow the curve between them); `
+        : '; ') +
       `${OFFSET_WORDS[source]}; resistance and gains as given; noise of samples independent; relativeError is that of the flux linkage ` +
       'at the peak (k = 2), each differential inductance has its own standard uncertainty',
   };

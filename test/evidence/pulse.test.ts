@@ -206,7 +206,8 @@ describe('offsets', () => {
     };
     const analysis = analysePulse(pulse);
     expect(analysis.voltageOffsetSource).toBe('closed loop');
-    // What is open: where between two samples the voltage switched, of 1900, and the current's own noise at either end.
+    // The record is cut where the current is still 0.4 % of its peak: that much of the peak's λ, up to 1.5 times as much for the larger
+    // inductance at zero current, is open, and the loop takes twice as long as the voltage alone needs: 0.004 · 1.5/2 of the voltage.
     const largest_V = Math.max(...pulse.voltage_V.map(Math.abs));
     expect(Math.abs(analysis.voltageOffset_V - whole.trueVoltageOffset_V)).toBeLessThan(3e-3 * largest_V);
   });

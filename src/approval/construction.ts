@@ -54,9 +54,9 @@ export const observed = (value: number, method: Method) => ({
 const modelUncertainty = (value: number, method: Method): number =>
   (Math.abs(value) * method.relativeError) / Math.sqrt(3);
 
-/** "at 95 °C", or nothing where no temperature is stated. */
-export const atTemperature = (temperature_degC: number | undefined): string =>
-  temperature_degC === undefined ? '' : ` and ${temperature_degC} °C`;
+/** ", core at 95 °C", or nothing where no temperature is stated. */
+export const coreAt = (temperature_degC: number | undefined): string =>
+  temperature_degC === undefined ? '' : `, core at ${temperature_degC} °C`;
 
 /** Resistance of a winding at a temperature that lies at `temperaturePointer` in the request. */
 export function windingResistanceAt(winding: Winding, temperature_degC: number, temperaturePointer: string) {

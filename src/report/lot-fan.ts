@@ -1,6 +1,6 @@
 import type { CustomSeriesOption } from 'echarts/charts';
-import { axisOver } from './axis.ts';
-import { drawFigure, emptyFigure, type FigureOptions, LEAST_PLOT_WIDTH, type Mark } from './figure.ts';
+import { drawFigure, emptyFigure, type FigureOptions, type Mark } from './figure.ts';
+import { inductanceAxes } from './inductance-axes.ts';
 import { bandBar, extentOfLimits, type InductanceLimits, levelMarks, saturationMark } from './inductance-limits.ts';
 import { pairs, thinned } from './points.ts';
 import { lineStyle, STROKES } from './stroke.ts';
@@ -52,17 +52,10 @@ export function lotFan(data: LotFanData, { id = 'lot-fan' }: FigureOptions = {})
   if (all.length === 0) return emptyFigure(id, title, 'No measured units to show');
 
   const extent = extentOfLimits(limits, initialInductance_H);
-  const x = axisOver([...all.map(([current]) => current), ...extent.currents], {
-    label: 'current',
-    unit: 'A',
-    fromZero: true,
-    room: LEAST_PLOT_WIDTH,
-  });
-  const y = axisOver([...all.map(([, inductance]) => inductance), ...extent.inductances], {
-    label: 'differential inductance',
-    unit: 'H',
-    fromZero: true,
-  });
+  const { x, y } = inductanceAxes(
+    [...all.map(([current]) => current), ...extent.currents],
+    [...all.map(([, inductance]) => inductance), ...extent.inductances],
+  );
   const placed = ([current, inductance]: readonly [number, number]) => [x.position(current), y.position(inductance)];
   const ends: Mark[] = LINES.flatMap(([name, text]) => {
     const last = curves[name].at(-1);

@@ -1,5 +1,5 @@
-import { axisOver } from './axis.ts';
-import { drawFigure, emptyFigure, type FigureOptions, LEAST_PLOT_WIDTH, type Mark } from './figure.ts';
+import { drawFigure, emptyFigure, type FigureOptions, type Mark } from './figure.ts';
+import { inductanceAxes } from './inductance-axes.ts';
 import {
   bandBar,
   dropLevel_H,
@@ -48,17 +48,10 @@ export function unitCurve(data: UnitCurveData, { id = 'unit-curve' }: FigureOpti
   const extent = extentOfLimits(limits, initialInductance_H);
   const all = [...measured, ...curve];
   const found = dropCurrent === undefined ? [] : [dropCurrent.current_A];
-  const x = axisOver([...all.map(([current]) => current), ...extent.currents, ...found], {
-    label: 'current',
-    unit: 'A',
-    fromZero: true,
-    room: LEAST_PLOT_WIDTH,
-  });
-  const y = axisOver([...all.map(([, inductance]) => inductance), ...extent.inductances], {
-    label: 'differential inductance',
-    unit: 'H',
-    fromZero: true,
-  });
+  const { x, y } = inductanceAxes(
+    [...all.map(([current]) => current), ...extent.currents, ...found],
+    [...all.map(([, inductance]) => inductance), ...extent.inductances],
+  );
   const placed = ([current, inductance]: readonly [number, number]) => [x.position(current), y.position(inductance)];
   const foundMark: Mark[] = [];
   const foundPoint: number[][] = [];

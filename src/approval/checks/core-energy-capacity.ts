@@ -1,7 +1,7 @@
 import { within } from '../../physics/invalid-quantity.ts';
 import { coredSaturation } from '../../physics/saturation.ts';
 import type { Check } from '../check.ts';
-import { atTemperature, COIL_LEVERS, observed } from '../construction.ts';
+import { COIL_LEVERS, coreAt, observed } from '../construction.ts';
 
 /** Could the core hold the duty's energy before its smallest section reaches saturation, whatever the current? */
 export const coreEnergyCapacity: Check = {
@@ -18,7 +18,7 @@ export const coreEnergyCapacity: Check = {
     if (energyAtFluxLimit === null) return [];
     return [
       {
-        what: `Energy that core and gap hold at the flux limit${atTemperature(temperature).replace(' and', ' at')}`,
+        what: `Energy that core and gap hold at the flux limit${coreAt(temperature)}`,
         unit: 'J',
         limit: { lower },
         ...observed(energyAtFluxLimit.total_J, method),

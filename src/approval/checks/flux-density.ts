@@ -3,7 +3,7 @@ import { methodAt } from '../../physics/characteristic.ts';
 import { within } from '../../physics/invalid-quantity.ts';
 import { fluxDensityInSmallestSection_T, saturationFluxDensity_T } from '../../physics/saturation.ts';
 import type { Check } from '../check.ts';
-import { atTemperature, COIL_LEVERS, COIL_POINTER, constructionCharacteristic, observed } from '../construction.ts';
+import { COIL_LEVERS, COIL_POINTER, constructionCharacteristic, coreAt, observed } from '../construction.ts';
 
 /** Does the smallest core section stay below its saturation flux density, by the duty's margin, at peak current and hot? */
 export const fluxDensity: Check = {
@@ -19,7 +19,7 @@ export const fluxDensity: Check = {
     const value = within(COIL_POINTER, () => fluxDensityInSmallestSection_T(coil, duty.peakCurrent_A, temperature));
     return [
       {
-        what: `Flux density in the smallest core section at ${inWords(duty.peakCurrent_A, 'A')}${atTemperature(temperature)}`,
+        what: `Flux density in the smallest core section at ${inWords(duty.peakCurrent_A, 'A')}${coreAt(temperature)}`,
         unit: 'T',
         limit: { upper: saturation_T * (1 - (duty.required?.fluxMargin ?? 0)) },
         ...observed(value, methodAt(characteristic, duty.peakCurrent_A)),

@@ -1,6 +1,6 @@
 import { inWords } from '../../evidence/wording.ts';
 import type { Check } from '../check.ts';
-import { atTemperature, COIL_LEVERS, constructionCharacteristic, observedInductance } from '../construction.ts';
+import { COIL_LEVERS, constructionCharacteristic, coreAt, observedInductance } from '../construction.ts';
 
 /** Does the part still hold its inductance at the duty's peak current, hot? The differential one: that is what ripple meets. */
 export const inductanceAtPeak: Check = {
@@ -12,7 +12,7 @@ export const inductanceAtPeak: Check = {
     const characteristic = constructionCharacteristic(construction, duty.coreTemperature_degC);
     return [
       {
-        what: `Differential inductance at ${inWords(duty.peakCurrent_A, 'A')}${atTemperature(duty.coreTemperature_degC)}`,
+        what: `Differential inductance at ${inWords(duty.peakCurrent_A, 'A')}${coreAt(duty.coreTemperature_degC)}`,
         unit: 'H',
         limit: { lower },
         ...observedInductance(characteristic, duty.peakCurrent_A),

@@ -1,7 +1,7 @@
 import { inWords } from '../../evidence/wording.ts';
 import { methodAt } from '../../physics/characteristic.ts';
 import type { Check } from '../check.ts';
-import { atTemperature, COIL_LEVERS, constructionCharacteristic, observed } from '../construction.ts';
+import { COIL_LEVERS, constructionCharacteristic, coreAt, observed } from '../construction.ts';
 
 /** Does the part store the energy that the duty needs at its peak current? By ∫ i dλ, not ½LI². */
 export const storedEnergy: Check = {
@@ -13,7 +13,7 @@ export const storedEnergy: Check = {
     const characteristic = constructionCharacteristic(construction, duty.coreTemperature_degC);
     return [
       {
-        what: `Stored energy at ${inWords(duty.peakCurrent_A, 'A')}${atTemperature(duty.coreTemperature_degC)}`,
+        what: `Stored energy at ${inWords(duty.peakCurrent_A, 'A')}${coreAt(duty.coreTemperature_degC)}`,
         unit: 'J',
         limit: { lower },
         ...observed(characteristic.energy_J(duty.peakCurrent_A), methodAt(characteristic, duty.peakCurrent_A)),

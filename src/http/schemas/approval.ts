@@ -48,7 +48,12 @@ export const CheckSchema = z
         description:
           'on what did not pass: for each input, the smallest change of it alone that makes the check pass; to is null, with a reason, where no value does',
       }),
-    units: list(z.object({ serial: z.string().exactOptional(), ...judgement }))
+    units: list(
+      z.object({
+        serial: z.string().exactOptional().meta({ description: 'of the unit; of a lot, its id and the quantity' }),
+        ...judgement,
+      }),
+    )
       .exactOptional()
       .meta({ description: 'each measured unit; the check itself answers with the most adverse' }),
   })
